@@ -1,0 +1,12 @@
+pub mod base;
+pub mod diagnose;
+pub mod job;
+pub mod place;
+pub mod plan;
+pub mod read;
+pub mod rules;
+pub mod scene;
+pub mod steel;
+pub mod table;
+pub mod tables;
+pub mod trace;

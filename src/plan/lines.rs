@@ -1,0 +1,56 @@
+//! D19: where bars stand across their run, and how many.
+
+use crate::base::{TOUCH, gaps};
+
+/// The last gap is not left narrower than this, mm.
+const NARROW: f64 = 75.0;
+
+/// Lines from `first` to `last` at `spacing`, the last gap taking the remainder; a last gap under 75 mm is shared with the one before.
+pub fn fill(first: f64, last: f64, spacing: f64) -> Vec<f64> {
+    let n = gaps(last - first, spacing);
+    let mut lines: Vec<f64> = (0..n).map(|i| first + i as f64 * spacing).collect();
+    lines.push(last);
+    if n >= 2 && last - lines[n - 1] < NARROW - TOUCH {
+        lines[n - 1] = (lines[n - 2] + last) / 2.0;
+    }
+    lines
+}
+
+/// Bars across a width with side cover to the bar: first and last at the covers.
+pub fn across(width: f64, side: f64, size: u32, spacing: f64) -> Vec<f64> {
+    let inset = side + f64::from(size) / 2.0;
+    fill(inset, width - inset, spacing)
+}
+
+/// Distribution in a clear length: ceil(length / spacing) bars, centred at their spacing.
+pub fn centred(from: f64, to: f64, spacing: f64) -> Vec<f64> {
+    let length = to - from;
+    let n = gaps(length, spacing);
+    let first = (length - n.saturating_sub(1) as f64 * spacing) / 2.0;
+    (0..n).map(|i| from + first + i as f64 * spacing).collect()
+}
+
+/// Moves lines by `by` towards higher values; one that this would push past `limit` moves the other way (D18).
+pub fn beside(lines: &[f64], by: f64, limit: f64) -> Vec<f64> {
+    lines.iter().map(|y| if y + by > limit + TOUCH { y - by } else { y + by }).collect()
+}
+
+/// The place nearest to `x` at which a bar of `size` overlaps none of the `others` (line, size), within `low..high`.
+pub fn clear_of(x: f64, size: f64, others: &[(f64, f64)], low: f64, high: f64) -> f64 {
+    let overlaps = |at: f64| others.iter().any(|(o, s)| (at - o).abs() < (size + s) / 2.0 - TOUCH);
+    if !overlaps(x) {
+        return x;
+    }
+    let touching = others.iter().flat_map(|(o, s)| [o + (size + s) / 2.0, o - (size + s) / 2.0]);
+    touching
+        .filter(|at| *at >= low - TOUCH && *at <= high + TOUCH && !overlaps(*at))
+        .min_by(|a, b| (a - x).abs().total_cmp(&(b - x).abs()).then(b.total_cmp(a)))
+        .unwrap_or(x)
+}
+
+/// The greatest clear gap from a line of either set to its nearest in the other, mm.
+pub fn worst_gap(a: &[f64], size_a: f64, b: &[f64], size_b: f64) -> f64 {
+    let nearest = |y: f64, set: &[f64]| set.iter().map(|o| (o - y).abs()).fold(f64::INFINITY, f64::min);
+    let worst = a.iter().map(|y| nearest(*y, b)).chain(b.iter().map(|y| nearest(*y, a))).fold(0.0, f64::max);
+    (worst - (size_a + size_b) / 2.0).max(0.0)
+}

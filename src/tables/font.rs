@@ -1,0 +1,82 @@
+//! The shipped font: its bytes for the writers and its widths for whoever lays out text.
+
+use crate::scene::Weight;
+use std::collections::HashMap;
+use std::sync::OnceLock;
+
+pub const FAMILY: &str = "Roboto Condensed";
+/// Height of the capitals over the size of the font.
+pub const CAPITAL: f64 = 0.711;
+
+pub struct Face {
+    pub bytes: &'static [u8],
+    pub woff2: &'static [u8],
+    advances: HashMap<char, f64>,
+}
+
+/// The two faces, regular and medium.
+pub fn face(weight: Weight) -> &'static Face {
+    static FACES: OnceLock<[Face; 2]> = OnceLock::new();
+    let faces = FACES.get_or_init(|| {
+        [
+            load(
+                include_bytes!("../../templates/fonts/RobotoCondensed-Regular.sub.ttf"),
+                include_bytes!("../../templates/fonts/RobotoCondensed-Regular.sub.woff2"),
+            ),
+            load(
+                include_bytes!("../../templates/fonts/RobotoCondensed-Medium.sub.ttf"),
+                include_bytes!("../../templates/fonts/RobotoCondensed-Medium.sub.woff2"),
+            ),
+        ]
+    });
+    match weight {
+        Weight::Regular => &faces[0],
+        Weight::Medium => &faces[1],
+    }
+}
+
+/// The shipped file is part of the program, so a face that does not parse is a fault of the build; a test draws with both.
+#[allow(clippy::expect_used)]
+fn load(bytes: &'static [u8], woff2: &'static [u8]) -> Face {
+    let parsed = ttf_parser::Face::parse(bytes, 0).expect("the shipped font parses");
+    let em = f64::from(parsed.units_per_em());
+    let mut advances = HashMap::new();
+    for subtable in parsed.tables().cmap.iter().flat_map(|cmap| cmap.subtables).filter(ttf_parser::cmap::Subtable::is_unicode) {
+        subtable.codepoints(|code| {
+            if let Some(letter) = char::from_u32(code)
+                && let Some(glyph) = parsed.glyph_index(letter)
+            {
+                advances.insert(letter, f64::from(parsed.glyph_hor_advance(glyph).unwrap_or(0)) / em);
+            }
+        });
+    }
+    Face { bytes, woff2, advances }
+}
+
+impl Face {
+    pub fn has(&self, letter: char) -> bool {
+        self.advances.contains_key(&letter)
+    }
+
+    /// Width of a text whose capitals are `height` mm high, mm.
+    pub fn width(&self, text: &str, height: f64) -> f64 {
+        text.chars().map(|c| self.advances.get(&c).copied().unwrap_or(0.6)).sum::<f64>() * height / CAPITAL
+    }
+}
+
+/// Breaks a text at spaces into lines no wider than `width` mm; a single word may be wider.
+pub fn wrap(text: &str, height: f64, width: f64) -> Vec<String> {
+    let font = face(Weight::Regular);
+    let mut lines: Vec<String> = Vec::new();
+    let mut line = String::new();
+    for word in text.split_whitespace() {
+        let tried = if line.is_empty() { word.to_string() } else { format!("{line} {word}") };
+        if !line.is_empty() && font.width(&tried, height) > width {
+            lines.push(std::mem::replace(&mut line, word.to_string()));
+        } else {
+            line = tried;
+        }
+    }
+    lines.push(line);
+    lines
+}
