@@ -1,3 +1,4 @@
+pub mod audit;
 pub mod base;
 pub mod diagnose;
 pub mod job;

@@ -12,6 +12,7 @@ fn main() {
                 println!("{} {}{} sh{} {:?} L{} {} {} n{} lap{:.0} {}", b.mark, b.letter, b.size, b.shape, b.dims, b.length, b.layer.name(), b.role.name(), b.each(), b.lap_mm, b.sets.first().map(|x| format!("{:?} step {:?} x{}", x.axis, x.step, x.count)).unwrap());
             }
         }
+        for c in audit::audit(&job, &m).concat() { if c.verdict != audit::Verdict::Pass { println!("{:?}", c); } }
         println!("total {}", m.total_kg());
     }
 }

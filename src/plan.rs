@@ -219,8 +219,9 @@ fn plan_slab(basis: &Basis, slab: &Slab) -> Plan {
     let mut work = Work { basis, slab, stations, plan: Book::default() };
     stations::explain(&mut work);
     let tops = top::decide(&mut work);
-    let ends = ends::decide(&mut work, &tops);
+    let mut ends = ends::decide(&mut work, &tops);
     bottom::plan(&mut work, &ends);
+    ends::lap(&mut work, &mut ends);
     top::plan(&mut work, tops, &ends);
     ends::close(&mut work, &ends);
     ends::hold(&mut work, &ends);

@@ -121,13 +121,15 @@ pub(super) fn push_distribution(work: &mut Work, run: Run, forms: [Form; 2]) {
     let pieces = equal(forms[0].at() + deduction, forms[1].at() - deduction, longest, lap.value);
     explain(work, &run, &lap, pieces.len());
     work.plan.laps.push((size, lap.value));
-    let limit = match run.along {
-        Along::X => work.slab.width.value - work.side(),
-        Along::Y => work.stations.end - work.side(),
-    } - run.size() / 2.0;
+    let middle = match run.along {
+        Along::X => work.slab.width.value / 2.0,
+        Along::Y => (work.stations.start + work.stations.end) / 2.0,
+    };
+    // Towards the middle of the slab: a bar that a bend holds must not be pushed into the bend.
+    let aside: Vec<f64> = run.lines.iter().map(|at| if *at <= middle { at + run.size() } else { at - run.size() }).collect();
     for (i, (low, high)) in pieces.iter().enumerate() {
         let made = between(size, Form::Straight(End::Lap(*low)), Form::Straight(End::Lap(*high)), &work.basis.deduction);
-        let lines = if i % 2 == 1 { lines::beside(&run.lines, run.size(), limit) } else { run.lines.clone() };
+        let lines = if i % 2 == 1 { aside.clone() } else { run.lines.clone() };
         let lap = if i == 0 { 0.0 } else { pieces[i - 1].1 - low };
         work.plan.runs.push(Run { made, lines, lap, ..run.clone() });
     }

@@ -1,7 +1,7 @@
 //! B2 and T2: distribution in every clear span and over the top bars (D19), each bar resting on what it crosses (D6).
 
 use super::{Along, Layer, Role, Run, Work, cut, lines};
-use crate::base::mm;
+use crate::base::{mm, up};
 use crate::job::Bars;
 use crate::rules::spacing;
 use crate::steel::made::{End, Form, between};
@@ -73,13 +73,14 @@ fn top(work: &mut Work) {
     for (zone, low, high) in zones {
         let mut lines = lines::fill(low + INSIDE, high - INSIDE, bars.value.spacing);
         let n = lines.len();
-        // The bar that a bend holds stands near the end: the first of T2 keeps the least clear gap from it.
+        // The bar that a bend holds stands near the end: the first of T2 keeps the least clear gap from it, in steps of 5 mm.
         for (x, size) in &held {
             let apart = (size + f64::from(bars.value.size)) / 2.0 + gap;
-            for i in [0, n - 1] {
-                if (lines[i] - x).abs() < apart {
-                    lines[i] = if lines[i] >= *x { x + apart } else { x - apart };
-                }
+            if (lines[0] - x).abs() < apart {
+                lines[0] = low + up(x + apart - low, 5.0);
+            }
+            if (lines[n - 1] - x).abs() < apart {
+                lines[n - 1] = high - up(high - (x - apart), 5.0);
             }
         }
         let zone = zone.split_once('/').map_or(String::new(), |(_, rest)| rest.replace("/T1", "/T2"));

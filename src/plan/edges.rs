@@ -75,8 +75,10 @@ fn free_lines(work: &Work, side: usize, size: u32, called: &Bars) -> Vec<f64> {
     let top = crossing_bars(work, side, &[Layer::T2]);
     let (start, end) = (work.stations.start + work.side(), work.stations.end - work.side());
     let others: Vec<(f64, f64)> = bottom.iter().chain(&top).copied().collect();
+    let middle = (start + end) / 2.0;
+    // Towards the middle of the slab, so that a bar held in a bend at a slab end keeps its edge bar inside it.
     let beside = |(x, s): &(f64, f64)| {
-        let touch = (s + d) / 2.0;
+        let touch = if *x <= middle { (s + d) / 2.0 } else { -(s + d) / 2.0 };
         let worst = |at: f64| top.iter().map(|(o, t)| (at - o).abs() - (t + d) / 2.0).fold(f64::INFINITY, f64::min);
         if worst(x + touch) >= -crate::base::TOUCH { x + touch } else { x - touch }
     };

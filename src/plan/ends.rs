@@ -49,6 +49,8 @@ pub(crate) struct EndPlan {
     pub lap: f64,
     /// Closing bars of their own, where the top bars do not close the end but B1 needs it.
     pub own: Option<Bars>,
+    /// How far behind the cover line straight bottom bars start, mm.
+    start: f64,
 }
 
 /// Left, right.
@@ -162,32 +164,69 @@ fn decide_end(work: &mut Work, side: usize, support: usize, tops: &[TopSet]) -> 
     let top = decide_top(work, support, &mut bars, bottom == BottomEnd::Closed);
     let closes = matches!(top, TopEnd::Closed { .. });
     let own = if bottom == BottomEnd::Closed && !closes { own_closing(work, &grid, &on) } else { None };
-    let closing_size = own.as_ref().map_or(bars.size, |b| b.size);
-    let closing_spacing = own.as_ref().map_or(bars.spacing, |b| b.spacing);
-    let mut lap = 0.0;
-    let mut back = 2.0 * work.h();
-    if bottom == BottomEnd::Closed && (closes || own.is_some()) {
-        let small = closing_size.min(on.size);
-        let full = cut::lap(work, small, closing_spacing.min(on.spacing), false);
-        // Every closing bar stands in contact beside a bar of the span only where their lines agree.
-        let apart = ((closing_spacing.max(on.spacing) / 2.0) - f64::from(closing_size + on.size)).max(0.0);
-        let aligned = (closing_spacing - on.spacing).abs() < 0.5;
-        let excess = if aligned { 0.0 } else { anchorage::lap_excess(apart, small) };
-        lap = full.value + excess;
-        back = back.max(start + lap);
+    EndPlan { support, bars, bottom, top, back: 2.0 * work.h(), lap: 0.0, own, start }
+}
+
+/// Sets the leg back of the closing bars that B1 needs, now that B1 stands: the full lap, and what it grows by where bars stand apart.
+pub(super) fn lap(work: &mut Work, ends: &mut Ends) {
+    for side in 0..2 {
+        let end = ends.0[side].clone();
+        let closes = matches!(end.top, TopEnd::Closed { .. }) || end.own.is_some();
+        if end.bottom != BottomEnd::Closed || !closes {
+            continue;
+        }
+        let bars = end.own.as_ref().unwrap_or(&end.bars).clone();
+        let face = face(work, side);
+        let reaches = |r: &&Run| {
+            let (low, high) = r.made.extent();
+            r.layer == Layer::B1 && if side == 0 { low < face + 50.0 } else { high > face - 50.0 }
+        };
+        let running: Vec<&Run> = work.plan.runs.iter().filter(reaches).collect();
+        let Some(size) = running.first().map(|r| r.made.size) else { continue };
+        let run_lines: Vec<f64> = running.iter().flat_map(|r| r.lines.clone()).collect();
+        let lines = closing_lines(work, &end, side, &bars);
+        let small = bars.size.min(size);
+        let apart = lines::worst_gap(&lines, f64::from(bars.size), &run_lines, f64::from(size));
+        let spacing = bars.spacing.min(running[0].spacing);
+        let full = cut::lap(work, small, spacing, false);
+        let excess = anchorage::lap_excess(apart, small);
+        let lap = full.value + excess;
+        // The lap counts from the upright's centre line.
+        let back = (2.0 * work.h()).max(end.start + f64::from(bars.size) / 2.0 + lap);
         let mut steps = full.steps;
         steps.push(
             Step::new(
-                "leg back: past the start of B1 by the lap, at least 2h",
-                format!("max(2 × {}, {} + {} + {})", mm(work.h()), mm(start), mm(lap - excess), mm(excess)),
+                "leg back: past the start of B1 by the lap, with what it grows by where bars stand apart; at least 2h",
+                format!("max(2 × {}, {} + {} + {})", mm(work.h()), mm(end.start + f64::from(bars.size) / 2.0), mm(full.value), mm(excess)),
                 format!("{} mm", mm(up(back, 5.0))),
             )
             .cited(rule("D7, D8")),
         );
-        work.plan.laps.push((small, lap));
+        let grid = work.slab.supports[end.support].grid.clone();
         work.explain(&format!("support:{grid}/T1/leg-back"), steps);
+        work.plan.laps.push((small, lap));
+        ends.0[side].lap = lap;
+        ends.0[side].back = back;
     }
-    EndPlan { support, bars, bottom, top, back, lap, own }
+}
+
+/// Lines of the bars at an end across the width (D19), moved off the bottom bars that share their level or their upright plane.
+pub(super) fn closing_lines(work: &Work, end: &EndPlan, side: usize, bars: &Bars) -> Vec<f64> {
+    let size = f64::from(bars.size);
+    let base = lines::across(work.slab.width.value, work.side(), bars.size, bars.spacing);
+    let closes = end.own.is_some() || matches!(end.top, TopEnd::Closed { .. });
+    let turned = matches!(end.top, TopEnd::Turned { .. });
+    let face = face(work, side);
+    let reach = if closes { end.back.max(end.lap).max(1000.0) } else { 0.0 };
+    let near = |r: &&Run| {
+        let (low, high) = r.made.extent();
+        r.layer == Layer::B1 && if side == 0 { low - reach <= face + 1.0 } else { high + reach >= face - 1.0 }
+    };
+    let own_level = |r: &&Run| closes || turned && r.made.shape != "00";
+    let others: Vec<(f64, f64)> =
+        work.plan.runs.iter().filter(near).filter(own_level).flat_map(|r| r.lines.iter().map(|y| (*y, r.size())).collect::<Vec<_>>()).collect();
+    let (low, high) = (work.side() + size / 2.0, work.slab.width.value - work.side() - size / 2.0);
+    base.into_iter().map(|y| lines::clear_of(y, size, &others, low, high)).collect()
 }
 
 /// The end of the bottom bars that run on (D7); also how far behind the cover line a straight bar starts.
@@ -328,16 +367,7 @@ pub(super) fn close(work: &mut Work, ends: &Ends) {
         let forms = if side == 0 { [closed, free] } else { [free, closed] };
         let made = between(bars.size, forms[0], forms[1], &work.basis.deduction);
         let size = f64::from(bars.size);
-        let others: Vec<(f64, f64)> = work
-            .plan
-            .runs
-            .iter()
-            .filter(|r| r.along == Along::X && (if side == 0 { r.made.extent().0 <= face + end.back } else { r.made.extent().1 >= face - end.back }))
-            .flat_map(|r| r.lines.iter().map(|y| (*y, r.size())).collect::<Vec<_>>())
-            .collect();
-        let (low, high) = (work.side() + size / 2.0, work.slab.width.value - work.side() - size / 2.0);
-        let base = lines::across(work.slab.width.value, work.side(), bars.size, bars.spacing);
-        let lines = base.into_iter().map(|y| lines::clear_of(y, size, &others, low, high)).collect();
+        let lines = closing_lines(work, end, side, bars);
         let grid = work.slab.supports[end.support].grid.clone();
         work.plan.runs.push(Run {
             layer: Layer::E,

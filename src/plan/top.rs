@@ -1,6 +1,6 @@
 //! T1: reaches over supports (D11), sets that run together in short spans (D14a), turns (D13, D14).
 
-use super::ends::{Ends, TopEnd};
+use super::ends::Ends;
 use super::pattern::{self, Turn};
 use super::{Along, Layer, Role, Run, Work, cut, lines};
 use crate::base::{mm, up};
@@ -168,8 +168,7 @@ fn plan_set(work: &mut Work, set: &TopSet, ends: &Ends) {
         () if !inner && full.is_none() => Turn::Alternate,
         () => pattern::choose(work, &zone, full, pair.is_some()),
     };
-    let lines = lines::across(work.slab.width.value, work.side(), size, set.bars.spacing);
-    let lines = clear_of_bottom(work, set, ends, lines);
+    let lines = set_lines(work, set, ends);
     explain_count(work, set, &zone, lines.len());
     let role = if is_single_end { Role::EndTop } else { Role::SupportTop };
     let z = work.h() - work.slab.cover.top.value - f64::from(size) / 2.0;
@@ -204,25 +203,13 @@ fn closing_level(work: &Work, made: &crate::steel::made::Made) -> f64 {
     work.slab.cover.bottom.value + f64::from(made.size) / 2.0 - low
 }
 
-/// Moves end bars off the bottom bars that share their level or their upright plane.
-fn clear_of_bottom(work: &Work, set: &TopSet, ends: &Ends, lines: Vec<f64>) -> Vec<f64> {
-    let size = f64::from(set.bars.size);
-    let mut others: Vec<(f64, f64)> = Vec::new();
-    for end in ends.0.iter().filter(|e| e.support == set.first || e.support == set.last) {
-        let closes = matches!(end.top, TopEnd::Closed { .. });
-        let upright = matches!(end.top, TopEnd::Turned { .. });
-        let x = if end.support == 0 { work.stations.start } else { work.stations.end };
-        let near = |r: &&Run| {
-            let (low, high) = r.made.extent();
-            let reach = if closes { end.back } else { 0.0 };
-            r.layer == Layer::B1 && (low - reach <= x + work.side() + 1.0) && (high + reach >= x - work.side() - 1.0)
-        };
-        for run in work.plan.runs.iter().filter(near).filter(|r| closes || upright && r.made.shape != "00") {
-            others.extend(run.lines.iter().map(|y| (*y, run.size())));
-        }
+/// Lines of a set across the width; a set that ends at a slab end keeps off the bottom bars there.
+fn set_lines(work: &Work, set: &TopSet, ends: &Ends) -> Vec<f64> {
+    let at_end = ends.0.iter().enumerate().find(|(_, e)| e.own.is_none() && (e.support == set.first || e.support == set.last));
+    match at_end {
+        Some((side, end)) => super::ends::closing_lines(work, end, side, &set.bars),
+        None => lines::across(work.slab.width.value, work.side(), set.bars.size, set.bars.spacing),
     }
-    let (low, high) = (work.side() + size / 2.0, work.slab.width.value - work.side() - size / 2.0);
-    lines.into_iter().map(|y| lines::clear_of(y, size, &others, low, high)).collect()
 }
 
 fn explain_count(work: &mut Work, set: &TopSet, zone: &str, n: usize) {
