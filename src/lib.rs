@@ -1,10 +1,12 @@
 pub mod audit;
 pub mod base;
 pub mod diagnose;
+pub mod draw;
 pub mod job;
 pub mod place;
 pub mod plan;
 pub mod read;
+pub mod report;
 pub mod rules;
 pub mod scene;
 pub mod steel;

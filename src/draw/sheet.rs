@@ -1,0 +1,312 @@
+//! The reinforcement sheet: four bands on one station line, the column beside them, the frame round both.
+
+use super::column;
+use super::detail::{Cut, name_layers};
+use super::frame::{self, Title};
+use super::notes;
+use super::paper::{Area, Lettering, Paper, Spot};
+use super::plan_view::{BREAK, Face, PlanView, level_dimension};
+use super::rows::{self, Rows};
+use super::view::View;
+use crate::audit::Check;
+use crate::base::mm;
+use crate::job::{Job, Slab};
+use crate::place::{BarModel, SlabModel};
+use crate::scene::{Anchor, Bookmark, Dash, Layer, Pen, Scene, Weight};
+use crate::tables::{SheetSize, tables};
+
+/// Paper left and right of the stations, mm.
+const MARGIN: f64 = 26.0;
+/// Paper of the grid heads and their dimensions, mm.
+const HEADS: f64 = 26.0;
+/// Paper of a view title, mm.
+const TITLE: f64 = 13.0;
+/// Paper under a plan, mm.
+const UNDER: f64 = 9.0;
+/// Paper of the support stubs under the section, mm.
+const STUBS: f64 = 13.0;
+
+/// A slab, or a part of one, and how it fits a sheet.
+struct Fit<'a> {
+    size: &'a SheetSize,
+    scale: f64,
+    low: f64,
+    high: f64,
+    gap: Option<(f64, f64)>,
+}
+
+/// Every sheet of a job.
+pub fn sheets(job: &Job, model: &BarModel, checks: &[Vec<Check>]) -> Vec<Scene> {
+    let texts = notes::notes(job, model);
+    let parts: Vec<(&Slab, &SlabModel, Fit)> =
+        job.slabs.iter().zip(&model.slabs).flat_map(|(slab, placed)| fits(job, slab, placed, &texts).into_iter().map(move |fit| (slab, placed, fit))).collect();
+    let of = parts.len();
+    parts.iter().enumerate().map(|(i, (slab, placed, fit))| sheet(job, slab, placed, fit, checks, &texts, i + 1, of)).collect()
+}
+
+fn column_width(size: &SheetSize) -> f64 {
+    match size.name.as_str() {
+        "A1" => 180.0,
+        "A2" => 165.0,
+        _ => 150.0,
+    }
+}
+
+/// Room for the bands on a sheet.
+fn band_area(size: &SheetSize) -> Area {
+    let space = frame::space(size);
+    Area::new([space.min[0] + 4.0, space.min[1] + 4.0], [space.max[0] - column_width(size) - 8.0, space.max[1] - 4.0])
+}
+
+/// Scale of levels in the section: 1:10 where the plan is drawn at 1:50 or larger, else 1:20.
+fn level_scale(scale: f64) -> f64 {
+    if scale <= 50.0 { 10.0 } else { 20.0 }
+}
+
+/// Height of all bands, mm, with the plans cut down by a gap across the slab.
+fn bands_height(slab: &Slab, model: &SlabModel, view: &View, gap: f64) -> f64 {
+    let plan = (slab.width.value - gap) / view.scale + if gap > 0.0 { BREAK } else { 0.0 };
+    let rows = Rows::of(model, view, true).height() + Rows::of(model, view, false).height();
+    HEADS + 2.0 * (TITLE + plan + UNDER) + rows + 2.0 * TITLE + slab.thickness.value / level_scale(view.scale) + STUBS + 8.0 + 10.0
+}
+
+/// The sheet and scale that fit: the largest scale first, for each the smallest sheet. Where none does, the slab is cut at supports
+/// over several sheets at the smallest scale, and a plan too wide for the sheet is broken.
+fn fits<'a>(job: &Job, slab: &Slab, model: &SlabModel, texts: &[String]) -> Vec<Fit<'a>> {
+    let all = &tables().sheets;
+    let sizes: Vec<&'static SheetSize> = ["A3", "A2", "A1"]
+        .iter()
+        .filter(|name| job.head.sheet.as_deref().is_none_or(|wanted| wanted == **name))
+        .filter_map(|name| all.sizes.iter().find(|s| s.name == **name))
+        .collect();
+    let scales: Vec<f64> = all.scales.iter().filter(|s| job.head.scale.is_none_or(|wanted| wanted == **s)).map(|s| f64::from(*s)).collect();
+    let st = &model.stations;
+    let (low, high) = (st.start.min(st.supports[0].centre), st.end.max(st.supports[st.last()].centre));
+    let column_fits = |size: &SheetSize, view: &View| {
+        let room = frame::space(size).height() - frame::TITLE_HEIGHT - 16.0;
+        column::height(view, slab, texts, column_width(size) - 6.0) <= room
+    };
+    for scale in &scales {
+        for size in &sizes {
+            let area = band_area(size);
+            let view = View::new(size, *scale, low, high, 0.0);
+            let wide = (high - low) / scale + 2.0 * MARGIN <= area.width();
+            if wide && bands_height(slab, model, &view, 0.0) <= area.height() && column_fits(size, &view) {
+                return vec![Fit { size, scale: *scale, low, high, gap: None }];
+            }
+        }
+    }
+    let (Some(size), Some(scale)) = (sizes.last().copied(), scales.last().copied()) else { return Vec::new() };
+    let room = band_area(size).width() - 2.0 * MARGIN;
+    windows(model, low, high, room * scale)
+        .into_iter()
+        .map(|(low, high)| {
+            let view = View::new(size, scale, low, high, 0.0);
+            let excess = bands_height(slab, model, &view, 0.0) - band_area(size).height();
+            let gap = (excess > 0.0).then(|| {
+                let out = ((excess / 2.0 + BREAK) * scale).min(slab.width.value - 1500.0).max(0.0);
+                let from = 0.62 * (slab.width.value - out);
+                (from, from + out)
+            });
+            Fit { size, scale, low, high, gap }
+        })
+        .collect()
+}
+
+/// Parts of a slab no longer than `most`, cut at supports.
+fn windows(model: &SlabModel, low: f64, high: f64, most: f64) -> Vec<(f64, f64)> {
+    let mut cuts = vec![low];
+    let mut at = low;
+    for pair in model.stations.supports.windows(2).skip(1) {
+        if pair[1].centre - at > most && pair[0].centre > at {
+            cuts.push(pair[0].centre);
+            at = pair[0].centre;
+        }
+    }
+    cuts.push(high);
+    // A last part that is still too long keeps its place: it runs out at the smallest scale only for spans past any sheet.
+    cuts.windows(2).map(|w| (w[0], w[1])).collect()
+}
+
+#[allow(clippy::too_many_arguments)]
+fn sheet(job: &Job, slab: &Slab, model: &SlabModel, fit: &Fit, checks: &[Vec<Check>], texts: &[String], number: usize, of: usize) -> Scene {
+    let size = fit.size;
+    let mut paper = Paper::new(size.width, size.height);
+    frame::frame(&mut paper, size);
+    let area = band_area(size);
+    let left = area.min[0] + ((area.width() - (fit.high - fit.low) / fit.scale) / 2.0).clamp(MARGIN, MARGIN + 30.0);
+    let view = View::new(size, fit.scale, fit.low, fit.high, left);
+    let levels = level_scale(fit.scale);
+    let title = Title {
+        size,
+        scales: format!("plans and stations 1:{}, levels 1:{levels}, at {}", fit.scale, size.name),
+        number,
+        of,
+        document: "Reinforcement drawing",
+    };
+    let top = frame::title_block(&mut paper, job, &title, column_width(size));
+    let space = frame::space(size);
+    let column = Area::new([space.max[0] - column_width(size) + 3.0, space.min[1] + 4.0], [space.max[0] - 3.0, top - 2.0]);
+    paper.line(Layer::Frame, "", &[[space.max[0] - column_width(size), space.min[1]], [space.max[0] - column_width(size), top]], Pen::solid(size.pens.concrete));
+    if let Some(text) = notes::stamp(job, checks) {
+        column::stamp(&mut paper, &view, &text, &column, top);
+    }
+    let mut y = column::close_ups(&mut paper, &view, slab, model, &column, column.min[1]);
+    y = column::layer_key(&mut paper, &view, model, &column, y);
+    y = column::legend(&mut paper, &view, model, &column, y);
+    column::notes(&mut paper, &view, texts, &column, y);
+    bands(&mut paper, &view, slab, model, fit, area.min[1]);
+    match_lines(&mut paper, &view, model, fit, &area, number);
+    let mut scene = paper.scene;
+    let part = if of > 1 { format!(", sheet {number} of {of}") } else { String::new() };
+    scene.title = format!("{} {}, revision {}: {}, slab {}{part}", job.head.drawing, job.head.title, job.head.revision, job.head.project, slab.mark);
+    scene.description = format!(
+        "Reinforcement of slab {}: bottom plan, top plan, section along the span and bars drawn out, at 1:{} on {}. {} marks. Dated {}.",
+        slab.mark,
+        fit.scale,
+        size.name,
+        model.bars.len(),
+        job.head.date_text()
+    );
+    scene.bookmarks = vec![Bookmark { title: format!("Sheet {number}: slab {}", slab.mark) }];
+    scene
+}
+
+fn bands(paper: &mut Paper, view: &View, slab: &Slab, model: &SlabModel, fit: &Fit, top: f64) {
+    let levels = level_scale(fit.scale);
+    let mut y = top + HEADS;
+    let mut grid_end = y;
+    heads(paper, view, model, top);
+    let x = view.x(view.low) - MARGIN + 4.0;
+    let scale = fit.scale;
+    let broken = if fit.gap.is_some() { ", broken across" } else { "" };
+    for (face, name) in [(Face::Bottom, "BOTTOM  B1 and B2"), (Face::Top, "TOP  T1, T2, ends and edges")] {
+        view_title(paper, view, x, y, &format!("Slab {}: {name}", slab.mark), &format!("plan 1:{scale}{broken}"));
+        let plan = PlanView { view, slab, model, face, top: y + TITLE, gap: fit.gap };
+        plan.draw(paper);
+        y += TITLE + plan.height() + UNDER;
+    }
+    let top_rows = Rows::of(model, view, false);
+    view_title(paper, view, x, y, "Top bars drawn out", &format!("stations 1:{scale}, uprights not to scale"));
+    y += TITLE;
+    top_rows.draw(paper, view, model, y);
+    y += top_rows.height();
+    view_title(paper, view, x, y, "Section along the span", &format!("stations 1:{scale}, levels 1:{levels}"));
+    y += TITLE;
+    let cut = Cut {
+        slab,
+        model,
+        axis: 0,
+        low: view.low.min(model.stations.supports[0].left_face.max(view.low - 200.0)),
+        high: view.high,
+        at: slab.width.value / 2.0,
+        scale: view.scale,
+        level_scale: levels,
+        corner: [view.x(view.low.min(model.stations.supports[0].left_face.max(view.low - 200.0))), y],
+    };
+    cut.draw(paper, view, STUBS - 5.0);
+    name_layers(paper, view, &cut);
+    y += cut.height() + STUBS;
+    let bottom_rows = Rows::of(model, view, true);
+    view_title(paper, view, x, y - 2.0, "Bottom bars drawn out", &format!("stations 1:{scale}"));
+    y += TITLE - 2.0;
+    bottom_rows.draw(paper, view, model, y);
+    y += bottom_rows.height();
+    rows::laps(paper, view, model, y + 3.0);
+    grid_end = grid_end.max(y + 5.0);
+    grids(paper, view, model, top + 17.0, grid_end);
+    scale_bar(paper, view, x, y + 10.0);
+}
+
+fn view_title(paper: &mut Paper, v: &View, x: f64, y: f64, title: &str, note: &str) {
+    let big = Lettering { layer: Layer::Text, mark: String::new(), height: tables().sheets.text.view, weight: Weight::Medium };
+    let area = paper.text(&big, Spot { at: [x, y + 7.5], anchor: Anchor::Start, upward: false }, title);
+    let small = Lettering { layer: Layer::Text, mark: String::new(), height: v.note, weight: Weight::Regular };
+    paper.text(&small, Spot { at: [area.max[0] + 4.0, y + 7.5], anchor: Anchor::Start, upward: false }, note);
+}
+
+/// Grid letters in circles, and the dimensions between them with the ends of the slab.
+fn heads(paper: &mut Paper, v: &View, model: &SlabModel, top: f64) {
+    let st = &model.stations;
+    let lettering = Lettering { layer: Layer::Grid, mark: String::new(), height: v.call_out, weight: Weight::Medium };
+    for (support, grid) in st.supports.iter().zip(&model.grids) {
+        if v.shows(support.centre) {
+            let x = v.x(support.centre);
+            paper.ring(Layer::Grid, "", [x, top + 5.0], 4.2, Pen::solid(v.pens.concrete));
+            paper.text(&lettering, Spot { at: [x, top + 5.0 + v.call_out / 2.0], anchor: Anchor::Middle, upward: false }, grid);
+        }
+    }
+    let y = top + 16.0;
+    for pair in st.supports.windows(2) {
+        if v.shows(pair[0].centre) && v.shows(pair[1].centre) {
+            level_dimension(paper, v, v.x(pair[0].centre), v.x(pair[1].centre), y, &mm(pair[1].centre - pair[0].centre));
+        }
+    }
+    let y = top + 22.5;
+    for (k, span) in st.spans.iter().enumerate() {
+        let _ = k;
+        if v.shows(span.left_face) && v.shows(span.right_face) {
+            level_dimension(paper, v, v.x(span.left_face), v.x(span.right_face), y, &format!("clear {}", mm(span.clear)));
+        }
+    }
+    for (a, b) in [(st.start, st.spans[0].left_face), (st.spans[st.spans.len() - 1].right_face, st.end)] {
+        if v.shows(a) && v.shows(b) {
+            level_dimension(paper, v, v.x(a), v.x(b), y, &mm(b - a));
+        }
+    }
+    for support in &st.supports[1..st.last()] {
+        if v.shows(support.left_face) && v.shows(support.right_face) {
+            level_dimension(paper, v, v.x(support.left_face), v.x(support.right_face), y, &mm(support.right_face - support.left_face));
+        }
+    }
+}
+
+/// Grid lines down through every band.
+fn grids(paper: &mut Paper, v: &View, model: &SlabModel, top: f64, bottom: f64) {
+    let pen = Pen { width: v.pens.thin, dash: Dash::Chain };
+    for support in &model.stations.supports {
+        if v.shows(support.centre) {
+            let x = v.x(support.centre);
+            paper.scene.line(Layer::Grid, &[[x, top - 7.8], [x, bottom]], pen);
+        }
+    }
+}
+
+/// A bar of five metres (or one) at the scale of the plans.
+fn scale_bar(paper: &mut Paper, v: &View, x: f64, y: f64) {
+    let step = if v.scale > 40.0 { 1000.0 } else { 500.0 };
+    let pen = Pen::solid(v.pens.thin);
+    let lettering = Lettering { layer: Layer::Text, mark: String::new(), height: v.note, weight: Weight::Regular };
+    for i in 0..5 {
+        let (a, b) = (x + f64::from(i) * step / v.scale, x + f64::from(i + 1) * step / v.scale);
+        paper.scene.rect(Layer::Text, [a, y], [b, y + 1.6], pen);
+        if i % 2 == 0 {
+            paper.scene.push(Layer::Text, "", crate::scene::Shape::Fill { points: vec![[a, y], [b, y], [b, y + 1.6], [a, y + 1.6]], white: false });
+        }
+    }
+    for i in [0, 5] {
+        let text = crate::base::num(f64::from(i) * step / 1000.0, 1);
+        let text = if i == 5 { format!("{text} m") } else { text };
+        paper.text(&lettering, Spot { at: [x + f64::from(i) * step / v.scale, y - 1.0], anchor: Anchor::Middle, upward: false }, &text);
+    }
+}
+
+/// Where a slab goes on over the next sheet.
+fn match_lines(paper: &mut Paper, v: &View, model: &SlabModel, fit: &Fit, area: &Area, number: usize) {
+    let st = &model.stations;
+    let pen = Pen { width: v.pens.concrete, dash: Dash::Chain };
+    let lettering = Lettering { layer: Layer::Text, mark: String::new(), height: v.note, weight: Weight::Medium };
+    let cuts = [(fit.low, number.saturating_sub(1), -3.0), (fit.high, number + 1, 3.0)];
+    for (station, sheet, offset) in cuts {
+        let Some(j) = st.supports.iter().position(|s| (s.centre - station).abs() < 0.5) else { continue };
+        if j == 0 || j == st.last() {
+            continue;
+        }
+        let x = v.x(station);
+        paper.scene.line(Layer::Grid, &[[x + offset * 0.2, area.min[1] + HEADS], [x + offset * 0.2, area.max[1] - 6.0]], pen);
+        let within = Area::new([0.0, 0.0], [paper.scene.width, paper.scene.height]);
+        let at = if offset < 0.0 { x - 3.0 } else { x + 3.0 + v.note };
+        let spots = (0..12).map(|i| Spot { at: [at, area.min[1] + HEADS + 50.0 + 25.0 * f64::from(i)], anchor: Anchor::Middle, upward: true });
+        paper.place(&lettering, spots, &format!("match line, grid {}: see sheet {sheet}", model.grids[j]), &within);
+    }
+}

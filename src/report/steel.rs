@@ -1,0 +1,107 @@
+//! Steel by slab, layer, size and class, with laps apart; and what a quantity surveyor asks besides.
+
+use crate::base::num;
+use crate::place::{BarModel, BarType, SlabModel};
+use crate::plan::Layer;
+use crate::steel::mass;
+use crate::table::Table;
+use std::collections::BTreeMap;
+
+/// Bars longer than this count as over-length, mm (usual stock).
+pub const OVER_LENGTH: i32 = 12_000;
+
+/// Sums of one group of bars over all members: number, metres, kg, and the kg that are laps.
+#[derive(Clone, Copy, Debug, Default)]
+pub struct Sum {
+    pub bars: u64,
+    pub length_m: f64,
+    pub kg: f64,
+    pub laps_kg: f64,
+}
+
+impl Sum {
+    fn add(&mut self, bar: &BarType) {
+        self.bars += u64::from(bar.total());
+        self.length_m += f64::from(bar.total()) * f64::from(bar.length) / 1000.0;
+        self.kg += bar.mass();
+        self.laps_kg += bar.lap_mm * f64::from(bar.members) / 1e6 * mass(bar.size, 1_000_000);
+    }
+}
+
+pub fn class(bar: &BarType) -> &'static str {
+    if bar.is_straight() { "straight" } else { "bent" }
+}
+
+/// Sums by any key.
+pub fn sums<K: Ord>(model: &BarModel, key: impl Fn(&SlabModel, &BarType) -> Option<K>) -> BTreeMap<K, Sum> {
+    let mut sums: BTreeMap<K, Sum> = BTreeMap::new();
+    for (slab, bar) in model.bars() {
+        if let Some(key) = key(slab, bar) {
+            sums.entry(key).or_default().add(bar);
+        }
+    }
+    sums
+}
+
+pub fn total(model: &BarModel) -> Sum {
+    sums(model, |_, _| Some(())).remove(&()).unwrap_or_default()
+}
+
+/// One row a slab, layer, size and class.
+pub fn table(model: &BarModel) -> Table {
+    let mut table = Table::new(&["slab", "layer", ">size_mm", "class", ">bars", ">length_m", ">mass_kg", ">laps_kg"]);
+    for (order, slab) in model.slabs.iter().enumerate() {
+        let of_slab = sums(model, |s, b| (s.mark == slab.mark).then(|| (order, b.layer, b.size, class(b))));
+        for ((_, layer, size, class), sum) in of_slab {
+            table.row([
+                slab.mark.clone(),
+                layer.name().to_string(),
+                size.to_string(),
+                class.to_string(),
+                sum.bars.to_string(),
+                format!("{:.3}", sum.length_m),
+                format!("{:.2}", sum.kg),
+                format!("{:.2}", sum.laps_kg),
+            ]);
+        }
+    }
+    table
+}
+
+/// Plan area and volume of concrete of all members, m² and m³, gross.
+pub fn concrete(slab: &SlabModel) -> (f64, f64) {
+    let area = (slab.stations.end - slab.stations.start) * slab.width * 1e-6 * f64::from(slab.members);
+    (area, area * slab.thickness * 1e-3)
+}
+
+/// The summary for the terminal: by size, by layer, by slab with rates, classes, over-length and laps.
+pub fn summary(model: &BarModel) -> Table {
+    let mut table = Table::new(&["steel", "", ">bars", ">length m", ">mass kg", ">laps kg", ">kg/m²", ">kg/m³"]);
+    let mut row = |group: &str, name: String, sum: &Sum, rates: Option<(f64, f64)>| {
+        let rate = |of: f64| if of > 0.0 { num(sum.kg / of, 1) } else { String::new() };
+        let (area, volume) = rates.map_or((String::new(), String::new()), |(a, v)| (rate(a), rate(v)));
+        table.row([group.to_string(), name, sum.bars.to_string(), num(sum.length_m, 1), num(sum.kg, 1), num(sum.laps_kg, 1), area, volume]);
+    };
+    let groups = |group: &'static str, sums: BTreeMap<String, Sum>, row: &mut dyn FnMut(&str, String, &Sum, Option<(f64, f64)>)| {
+        for (name, sum) in sums {
+            row(group, name, &sum, None);
+        }
+    };
+    groups("size", sums(model, |_, b| Some(format!("{}{:02}", b.letter, b.size))), &mut row);
+    groups("layer", sums(model, |_, b| Some(b.layer.name().to_string())), &mut row);
+    groups("class", sums(model, |_, b| Some(class(b).to_string())), &mut row);
+    groups("over 12 m", sums(model, |_, b| (b.length > OVER_LENGTH).then(|| b.type_size())), &mut row);
+    for slab in &model.slabs {
+        let own = sums(model, |s, _| (s.mark == slab.mark).then_some(())).remove(&()).unwrap_or_default();
+        row("slab", format!("{} × {}", slab.mark, slab.members), &own, Some(concrete(slab)));
+    }
+    let all = model.slabs.iter().map(concrete).fold((0.0, 0.0), |a, b| (a.0 + b.0, a.1 + b.1));
+    row("total", String::new(), &total(model), Some(all));
+    table
+}
+
+/// Layers in laying order that a slab has.
+pub fn layers(slab: &SlabModel) -> Vec<Layer> {
+    let order = [Layer::B1, Layer::B2, Layer::E, Layer::T2, Layer::T1];
+    order.into_iter().filter(|l| slab.bars.iter().any(|b| b.layer == *l)).collect()
+}
