@@ -1,1 +1,7 @@
+//! Every test of the program, in one binary.
 
+#![allow(clippy::unwrap_used, clippy::expect_used, clippy::panic)]
+
+mod outside;
+mod faults;
+mod random_jobs;

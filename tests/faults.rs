@@ -1,0 +1,1 @@
+//! Faulty and hostile job files.

@@ -1,0 +1,1 @@
+//! Values from outside: published tables, worked examples, exact geometry, general-purpose libraries.
