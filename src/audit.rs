@@ -13,7 +13,7 @@ mod spacings;
 use crate::job::{Job, Slab};
 use crate::place::{BarModel, SlabModel};
 use crate::tables::tables;
-use crate::trace::{Cite, ec2, cite, rule};
+use crate::trace::{Cite, cite, ec2, rule};
 use pieces::Pieces;
 
 #[derive(Clone, Copy, Debug, PartialEq, Eq, PartialOrd, Ord)]

@@ -133,7 +133,11 @@ pub fn run(arguments: impl IntoIterator<Item = std::ffi::OsString>) -> u8 {
         Err(fault) => {
             let status = if fault.use_stderr() { FAILED } else { DONE };
             let text = fault.render().to_string();
-            if fault.use_stderr() { talk(&text) } else { say(&text) }
+            if fault.use_stderr() {
+                talk(&text)
+            } else {
+                say(&text)
+            }
             return status;
         }
     };

@@ -101,7 +101,10 @@ fn render_one(fault: &Fault, source: &str, path: &str, renderer: &Renderer) -> S
         annotation = annotation.label(fault.label.as_str());
     }
     let place = format!("{path}:{line}:{column}");
-    let mut group = level.primary_title(fault.message.as_str()).id(fault.code).element(Snippet::source(window).line_start(line).path(place.as_str()).annotation(annotation));
+    let mut group = level
+        .primary_title(fault.message.as_str())
+        .id(fault.code)
+        .element(Snippet::source(window).line_start(line).path(place.as_str()).annotation(annotation));
     if !fault.rule.is_empty() {
         group = group.element(Level::NOTE.with_name("rule").message(fault.rule.as_str()));
     }

@@ -114,8 +114,7 @@ pub enum EndBar {
 }
 
 impl EndBar {
-    pub const WORDS: [(&'static str, EndBar); 4] =
-        [("auto", EndBar::Auto), ("u-bar", EndBar::UBar), ("l-bar", EndBar::LBar), ("straight", EndBar::Straight)];
+    pub const WORDS: [(&'static str, EndBar); 4] = [("auto", EndBar::Auto), ("u-bar", EndBar::UBar), ("l-bar", EndBar::LBar), ("straight", EndBar::Straight)];
 }
 
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -147,12 +146,8 @@ pub enum Arrangement {
 }
 
 impl Arrangement {
-    pub const WORDS: [(&'static str, Arrangement); 4] = [
-        ("auto", Arrangement::Auto),
-        ("full", Arrangement::Full),
-        ("alternate", Arrangement::Alternate),
-        ("reversed", Arrangement::Reversed),
-    ];
+    pub const WORDS: [(&'static str, Arrangement); 4] =
+        [("auto", Arrangement::Auto), ("full", Arrangement::Full), ("alternate", Arrangement::Alternate), ("reversed", Arrangement::Reversed)];
 }
 
 /// One slab: lengths in mm, loads in kN/m², levels in mm above datum.

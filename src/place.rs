@@ -3,8 +3,8 @@
 
 use crate::base::{Point3, area_per_metre, mm, num, shifted, tidy};
 use crate::job::Job;
-use crate::plan::{Along, Layer, Plan, Reason, Role, Run};
 use crate::plan::stations::Stations;
+use crate::plan::{Along, Layer, Plan, Reason, Role, Run};
 use crate::steel;
 use crate::trace::{Ledger, Step, rule};
 use itertools::Itertools;
@@ -151,7 +151,12 @@ fn bar_types(runs: &[Run], letter: &str, members: u32) -> Vec<(BarType, Run)> {
         let sets = sets_of(run);
         let lap = run.lap * run.lines.len() as f64;
         let alike = |b: &BarType| {
-            b.layer == run.layer && b.role == run.role && b.size == run.made.size && b.shape == run.made.shape && b.dims == run.made.dims && b.length == run.made.length
+            b.layer == run.layer
+                && b.role == run.role
+                && b.size == run.made.size
+                && b.shape == run.made.shape
+                && b.dims == run.made.dims
+                && b.length == run.made.length
         };
         match types.iter_mut().find(|(b, _)| alike(b)) {
             Some((bar, _)) => {
@@ -255,9 +260,7 @@ fn explain_mark(slab: &str, index: usize, bar: &BarType, ledger: &mut Ledger) {
     }
     let zones: Vec<(String, u32)> = bar.sets.iter().map(|s| (s.zone.clone(), s.count)).into_grouping_map().sum().into_iter().sorted().collect();
     let mut steps: Vec<Step> = zones.iter().map(|(zone, n)| Step::new(format!("in {zone}"), "", n.to_string())).collect();
-    steps.push(
-        Step::new("total", format!("{} in each × {} members", bar.each(), bar.members), bar.total().to_string()).cited(rule("D19")),
-    );
+    steps.push(Step::new("total", format!("{} in each × {} members", bar.each(), bar.members), bar.total().to_string()).cited(rule("D19")));
     ledger.put(format!("{address}/count"), steps);
     ledger.put(
         format!("{address}/mass"),

@@ -230,7 +230,7 @@ fn plan_slab(basis: &Basis, slab: &Slab) -> Plan {
     corners::plan(&mut work);
     let Work { stations, plan: book, .. } = work;
     let mut laps = book.laps;
-    laps.sort_by(|a, b| (a.0, a.1 as i64).cmp(&(b.0, b.1 as i64)));
+    laps.sort_by_key(|lap| (lap.0, lap.1 as i64));
     laps.dedup_by(|a, b| a.0 == b.0 && (a.1 - b.1).abs() < 0.5);
     Plan { stations, runs: book.runs, ledger: book.ledger, reasons: book.reasons, laps }
 }

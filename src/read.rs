@@ -14,17 +14,21 @@ use toml::de::{DeTable, DeValue};
 pub const MOST_BYTES: usize = 1 << 20;
 
 /// The text of a job file, without its byte order mark. Faults where it is too large or not UTF-8.
-pub fn text(bytes: &[u8]) -> Result<String, Fault> {
+pub fn text(bytes: &[u8]) -> Result<String, Box<Fault>> {
     if bytes.len() > MOST_BYTES {
-        return Err(Fault::new("too-large", 0..0, format!("the file is larger than {MOST_BYTES} bytes"))
-            .rule(format!("a job file holds one drawing and at most {MOST_BYTES} bytes"))
-            .remedy("split the slabs over several drawings"));
+        return Err(Box::new(
+            Fault::new("too-large", 0..0, format!("the file is larger than {MOST_BYTES} bytes"))
+                .rule(format!("a job file holds one drawing and at most {MOST_BYTES} bytes"))
+                .remedy("split the slabs over several drawings"),
+        ));
     }
     match std::str::from_utf8(bytes) {
         Ok(text) => Ok(text.strip_prefix('\u{feff}').unwrap_or(text).to_string()),
-        Err(fault) => Err(Fault::new("encoding", 0..0, format!("the file is not UTF-8 text: byte {} cannot be read", fault.valid_up_to()))
-            .rule("a job file is UTF-8 text")
-            .remedy("save it as UTF-8 in your editor")),
+        Err(fault) => Err(Box::new(
+            Fault::new("encoding", 0..0, format!("the file is not UTF-8 text: byte {} cannot be read", fault.valid_up_to()))
+                .rule("a job file is UTF-8 text")
+                .remedy("save it as UTF-8 in your editor"),
+        )),
     }
 }
 

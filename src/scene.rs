@@ -15,17 +15,8 @@ pub enum Layer {
 }
 
 impl Layer {
-    pub const ALL: [Layer; 9] = [
-        Layer::Frame,
-        Layer::Grid,
-        Layer::Concrete,
-        Layer::Bottom,
-        Layer::Top,
-        Layer::Edge,
-        Layer::Dimension,
-        Layer::CallOut,
-        Layer::Text,
-    ];
+    pub const ALL: [Layer; 9] =
+        [Layer::Frame, Layer::Grid, Layer::Concrete, Layer::Bottom, Layer::Top, Layer::Edge, Layer::Dimension, Layer::CallOut, Layer::Text];
 
     pub fn name(self) -> &'static str {
         match self {
@@ -77,11 +68,30 @@ pub enum Weight {
 
 #[derive(Clone, Debug)]
 pub enum Shape {
-    Line { points: Vec<[f64; 2]>, closed: bool, pen: Pen },
-    Circle { centre: [f64; 2], radius: f64, pen: Option<Pen>, filled: bool },
-    Fill { points: Vec<[f64; 2]>, white: bool },
+    Line {
+        points: Vec<[f64; 2]>,
+        closed: bool,
+        pen: Pen,
+    },
+    Circle {
+        centre: [f64; 2],
+        radius: f64,
+        pen: Option<Pen>,
+        filled: bool,
+    },
+    Fill {
+        points: Vec<[f64; 2]>,
+        white: bool,
+    },
     /// Text on its base line; `height` is the height of its capitals, `upward` turns it to read from the right.
-    Text { at: [f64; 2], height: f64, text: String, anchor: Anchor, weight: Weight, upward: bool },
+    Text {
+        at: [f64; 2],
+        height: f64,
+        text: String,
+        anchor: Anchor,
+        weight: Weight,
+        upward: bool,
+    },
 }
 
 #[derive(Clone, Debug)]

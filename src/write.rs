@@ -38,11 +38,46 @@ pub struct Format {
 /// Every format; help, lists, README and tests are made from these rows.
 pub const FORMATS: &[Format] = &[
     Format { key: "sheet-pdf", group: "sheet", files: "DRAWING-sheet.pdf", what: "reinforcement sheet, all pages", user: "detailer, site", make: sheet_pdf },
-    Format { key: "sheet-svg", group: "sheet", files: "DRAWING-sheet-1.svg ...", what: "reinforcement sheet, one file a page", user: "detailer, web", make: sheet_svg },
-    Format { key: "schedule-pdf", group: "schedule", files: "DRAWING-schedule.pdf", what: "bar schedule in the form of BS 8666", user: "supplier, site", make: schedule_pdf },
-    Format { key: "schedule-csv", group: "schedule", files: "DRAWING-schedule.csv", what: "bar schedule, one row a mark", user: "supplier, spreadsheet", make: schedule_csv },
-    Format { key: "steel", group: "steel", files: "DRAWING-steel.csv", what: "steel by slab, layer, size and class", user: "quantity surveyor", make: steel_csv },
-    Format { key: "model", group: "model", files: "DRAWING-model.json", what: "every bar and every check; schema: templates/model.schema.json", user: "scripts", make: model_json },
+    Format {
+        key: "sheet-svg",
+        group: "sheet",
+        files: "DRAWING-sheet-1.svg ...",
+        what: "reinforcement sheet, one file a page",
+        user: "detailer, web",
+        make: sheet_svg,
+    },
+    Format {
+        key: "schedule-pdf",
+        group: "schedule",
+        files: "DRAWING-schedule.pdf",
+        what: "bar schedule in the form of BS 8666",
+        user: "supplier, site",
+        make: schedule_pdf,
+    },
+    Format {
+        key: "schedule-csv",
+        group: "schedule",
+        files: "DRAWING-schedule.csv",
+        what: "bar schedule, one row a mark",
+        user: "supplier, spreadsheet",
+        make: schedule_csv,
+    },
+    Format {
+        key: "steel",
+        group: "steel",
+        files: "DRAWING-steel.csv",
+        what: "steel by slab, layer, size and class",
+        user: "quantity surveyor",
+        make: steel_csv,
+    },
+    Format {
+        key: "model",
+        group: "model",
+        files: "DRAWING-model.json",
+        what: "every bar and every check; schema: templates/model.schema.json",
+        user: "scripts",
+        make: model_json,
+    },
 ];
 
 impl Format {

@@ -2,6 +2,6 @@
 
 #![allow(clippy::unwrap_used, clippy::expect_used, clippy::panic)]
 
-mod outside;
 mod faults;
+mod outside;
 mod random_jobs;

@@ -34,7 +34,15 @@ pub(super) fn checks(slate: &mut Slate) {
         let off = mark.dims.values().map(|v| v % 5).max().unwrap_or(0) + mark.length % 25;
         slate.at_most("rounding", &at, f64::from(off), 0.0, "mm");
         let placed = mark.placements().count();
-        slate.file("count", &at, f64::from(mark.total()), placed as f64 * f64::from(slate.slab.members), "", mark.total() as usize == placed * slate.slab.members as usize, Verdict::Fail);
+        slate.file(
+            "count",
+            &at,
+            f64::from(mark.total()),
+            placed as f64 * f64::from(slate.slab.members),
+            "",
+            mark.total() as usize == placed * slate.slab.members as usize,
+            Verdict::Fail,
+        );
         if mark.is_straight() {
             let drawn = mark.sets.iter().map(|s| (polyline_length(&s.axis) - f64::from(mark.length)).abs()).fold(0.0, f64::max);
             slate.at_most("rounding", &format!("{at}/axis"), drawn, 0.0, "mm");

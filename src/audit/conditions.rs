@@ -13,7 +13,15 @@ pub(super) fn checks(slate: &mut Slate) {
     let ratio = shortest / longest;
     slate.file("rule-spans", &name, ratio, conditions.shortest_over_longest, "", ratio >= conditions.shortest_over_longest - 1e-9, Verdict::Fail);
     let loads = if permanent > 0.0 { variable / permanent } else { f64::MAX };
-    slate.file("rule-load-ratio", &name, loads.min(1e6), conditions.variable_over_permanent, "", loads <= conditions.variable_over_permanent + 1e-9, Verdict::Fail);
+    slate.file(
+        "rule-load-ratio",
+        &name,
+        loads.min(1e6),
+        conditions.variable_over_permanent,
+        "",
+        loads <= conditions.variable_over_permanent + 1e-9,
+        Verdict::Fail,
+    );
     slate.file("rule-load", &name, variable, conditions.variable_most_kn_m2, "kN/m²", variable <= conditions.variable_most_kn_m2 + 1e-9, Verdict::Fail);
     slate.file("rule-span-count", &name, spans.len() as f64, conditions.least_spans as f64, "", spans.len() >= conditions.least_spans, Verdict::Fail);
     // Cannot be seen in the file: a warning until actions prove it.

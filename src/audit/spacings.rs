@@ -4,8 +4,8 @@ use super::pieces::Row;
 use super::{Slate, Verdict};
 use crate::job::Edge;
 use crate::plan::{Layer, Role};
-use crate::rules::{anchorage, areas, spacing};
 use crate::rules::spacing::Zone;
+use crate::rules::{anchorage, areas, spacing};
 
 pub(super) fn checks(slate: &mut Slate) {
     let h = slate.h();
@@ -50,7 +50,8 @@ fn top(slate: &mut Slate, h: f64) {
         let size = over.iter().map(|p| p.size).fold(0.0, f64::max);
         let (low, high) = (over.iter().map(|p| p.low[0]).fold(f64::INFINITY, f64::min), over.iter().map(|p| p.high[0]).fold(f64::NEG_INFINITY, f64::max));
         let ends = [low + 1.0, high - 1.0].map(|x| Row::of(main.iter().copied().filter(|p| p.covers(0, x)), 1).widest());
-        let mut places: Vec<f64> = slate.pieces.across(|p| p.role == Role::DistributionTop && p.low[0] > low && p.low[0] < high).iter().map(|p| p.low[0]).collect();
+        let mut places: Vec<f64> =
+            slate.pieces.across(|p| p.role == Role::DistributionTop && p.low[0] > low && p.low[0] < high).iter().map(|p| p.low[0]).collect();
         places.sort_by(f64::total_cmp);
         places.dedup_by(|a, b| (*a - *b).abs() < 60.0);
         let distribution = Row { places }.widest();

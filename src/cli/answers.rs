@@ -5,8 +5,8 @@ use crate::base::num;
 use crate::report::explain;
 use crate::rules::anchorage::{self, Bar, Bond, Form};
 use crate::steel::bend::{Bent, Dims, formula};
-use crate::steel::walk::walk;
 use crate::steel::mass;
+use crate::steel::walk::walk;
 use crate::tables::tables;
 use crate::trace::Step;
 use serde_json::json;
@@ -46,7 +46,9 @@ pub fn bend(shape: &str, size: &str, dims: &[String], as_json: bool) -> u8 {
         for text in dims {
             let (letter, value) = text.split_once('=').ok_or(format!("{text:?}: write a dimension like A=1200"))?;
             let mut chars = letter.chars();
-            let (Some(letter), None) = (chars.next().map(|c| c.to_ascii_uppercase()), chars.next()) else { return Err(format!("{text:?}: one letter before =")) };
+            let (Some(letter), None) = (chars.next().map(|c| c.to_ascii_uppercase()), chars.next()) else {
+                return Err(format!("{text:?}: one letter before ="));
+            };
             let value: f64 = value.parse().map_err(|_| format!("{text:?}: {value:?} is not a number of mm"))?;
             if letters.insert(letter, value).is_some() {
                 return Err(format!("dimension {letter} is given twice"));
@@ -79,7 +81,12 @@ pub fn bend(shape: &str, size: &str, dims: &[String], as_json: bool) -> u8 {
             Err(fault) => say(&format!("centre line none: {fault}\n")),
         }
         say(&format!("mass        {} kg at {} kg/m\n", num(kg, 3), num(bent.bar.mass_kg_m, 3)));
-        say(&format!("least       end leg P {} mm, radius r {} mm, over two bends {} mm\n", num(bent.bar.projection, 0), num(bent.bar.radius, 0), num(bent.bar.over_two_bends, 0)));
+        say(&format!(
+            "least       end leg P {} mm, radius r {} mm, over two bends {} mm\n",
+            num(bent.bar.projection, 0),
+            num(bent.bar.radius, 0),
+            num(bent.bar.over_two_bends, 0)
+        ));
         for met in bent.conditions() {
             let word = if met.ok { "met" } else { "NOT MET" };
             let memory = if met.memory { " (from memory)" } else { "" };
@@ -131,7 +138,15 @@ pub fn lap(asked: &Lap, as_json: bool) -> u8 {
         envelope("lap", true, fields);
         return DONE;
     }
-    say(&format!("size {}, {}, {} bond, cover {} mm, spacing {} mm, {} % lapped at one section\n\n", bar.d, concrete.class, if asked.poor { "poor" } else { "good" }, num(asked.cover, 1), num(asked.spacing, 1), asked.share));
+    say(&format!(
+        "size {}, {}, {} bond, cover {} mm, spacing {} mm, {} % lapped at one section\n\n",
+        bar.d,
+        concrete.class,
+        if asked.poor { "poor" } else { "good" },
+        num(asked.cover, 1),
+        num(asked.spacing, 1),
+        asked.share
+    ));
     for (name, worked) in [("anchorage, straight", &straight), ("anchorage, bent", &bent), ("lap, straight", &lap)] {
         say(&format!("{name}: {} mm\n", num(worked.value.ceil(), 0)));
         say(&steps(&worked.steps));

@@ -115,17 +115,15 @@ fn restore(folder: &Path, old: &Path, moved: &[(&str, bool)], last: &str) {
 fn remove_stale_pages(folder: &Path, files: &[Artifact]) {
     for file in files {
         let Some(stem) = file.name.strip_suffix("-sheet-1.svg") else { continue };
+        let page = |number: usize| format!("{stem}-sheet-{number}.svg");
         let mut number = 2;
-        loop {
-            let name = format!("{stem}-sheet-{number}.svg");
-            let place = folder.join(&name);
-            if files.iter().any(|f| f.name == name) {
-                number += 1;
-            } else if place.exists() && is_ours(&place) && std::fs::remove_file(&place).is_ok() {
-                number += 1;
-            } else {
-                break;
-            }
+        let is_new = |number: usize| files.iter().any(|f| f.name == page(number));
+        let removed = |number: usize| {
+            let place = folder.join(page(number));
+            is_ours(&place) && std::fs::remove_file(&place).is_ok()
+        };
+        while is_new(number) || removed(number) {
+            number += 1;
         }
     }
 }

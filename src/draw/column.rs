@@ -21,44 +21,100 @@ fn heading(paper: &mut Paper, v: &View, area: &Area, y: f64, text: &str) -> f64 
     y + v.call_out + 3.5
 }
 
-/// Scale of the close-ups: 1:10 where two stand side by side in the column, else 1:20.
-pub fn close_up_scale(width: f64) -> f64 {
-    if (width - 34.0) / 2.0 >= LOOK / 10.0 - 15.0 { 10.0 } else { 20.0 }
+/// How the close-ups are set out: their scale, how many stand side by side, and the paper each takes.
+pub struct CloseUps {
+    pub scale: f64,
+    pub columns: usize,
+    pub step: f64,
 }
 
-/// Paper height of one row of close-ups, mm.
-fn close_up_height(slab: &Slab, scale: f64) -> f64 {
-    slab.thickness.value / scale + 30.0
+impl CloseUps {
+    /// The largest scale at which the four fit a width: two side by side where both find room.
+    pub fn in_width(slab: &Slab, width: f64) -> CloseUps {
+        let step = |scale: f64| slab.thickness.value / scale + 42.0;
+        let takes = |scale: f64| LOOK / scale + SPARE;
+        let set = |scale: f64, columns: usize| CloseUps { scale, columns, step: step(scale) };
+        if takes(5.0) <= width && slab.thickness.value <= 250.0 {
+            set(5.0, 1)
+        } else if 2.0 * takes(10.0) <= width + 40.0 {
+            set(10.0, 2)
+        } else {
+            set(20.0, 2)
+        }
+    }
+
+    pub fn height(&self) -> f64 {
+        self.step * (4 / self.columns) as f64
+    }
 }
 
-/// Ends and side edges, two in a row; returns the paper height below them.
+/// Paper beside a close-up for its thickness and marks, mm.
+const SPARE: f64 = 30.0;
+
+/// Ends and side edges; returns the paper height below them.
 pub fn close_ups(paper: &mut Paper, v: &View, slab: &Slab, model: &SlabModel, area: &Area, top: f64) -> f64 {
-    let scale = close_up_scale(area.width());
-    let room = (area.width() - 30.0) / 2.0;
-    let look = LOOK.min(room * scale);
+    let set = CloseUps::in_width(slab, area.width());
+    let room = area.width() / set.columns as f64;
+    let look = LOOK.min((room - 16.0) * set.scale);
     let st = &model.stations;
     let middle = (st.spans[0].left_face + st.spans[0].right_face) / 2.0;
     let outer_low = st.start.min(st.supports[0].left_face.max(st.start - 120.0));
     let outer_high = st.end.max(st.supports[st.last()].right_face.min(st.end + 120.0));
     let width = slab.width.value;
-    let across = width / 2.0;
     let names = (model.grids.first().cloned().unwrap_or_default(), model.grids.last().cloned().unwrap_or_default());
+    let scale = set.scale;
     let views = [
-        (0, outer_low, outer_low + look, across, format!("End {}  1:{scale}", names.0)),
-        (0, outer_high - look, outer_high, across, format!("End {}  1:{scale}", names.1)),
-        (1, 0.0, look, middle, format!("Near edge, span 1  1:{scale}")),
-        (1, width - look, width, middle, format!("Far edge, span 1  1:{scale}")),
+        (0, outer_low, outer_low + look, 0.3 * width, format!("End {}  1:{scale}", names.0)),
+        (0, outer_high - look, outer_high, 0.3 * width, format!("End {}  1:{scale}", names.1)),
+        (1, 0.0, look, middle, format!("Near edge, in span 1  1:{scale}")),
+        (1, width - look, width, middle, format!("Far edge, in span 1  1:{scale}")),
     ];
-    let step = close_up_height(slab, scale);
     for (i, (axis, low, high, at, title)) in views.into_iter().enumerate() {
-        // A view that opens to the left leaves room for its thickness on that side.
+        let (row, place) = (i / set.columns, i % set.columns);
+        // A view that opens to the left has its thickness on that side.
         let opens_left = i % 2 == 1;
-        let x = area.min[0] + if opens_left { room + 22.0 } else { 0.0 };
-        let corner = [x + if opens_left { 8.0 } else { 0.0 } - if opens_left { 0.0 } else { 0.0 }, top + (i / 2) as f64 * step + 14.0];
+        let left = area.min[0] + place as f64 * room + if opens_left { room - look / scale - 2.0 } else { 2.0 };
+        let corner = [left, top + row as f64 * set.step + 17.0];
         let cut = Cut { slab, model, axis, low, high, at, scale, level_scale: scale, corner };
-        close_up(paper, v, &cut, &title);
+        let within = Area::new([area.min[0] + place as f64 * room - 2.0, top], [area.min[0] + (place + 1) as f64 * room + 2.0, top + set.height()]);
+        close_up(paper, v, &cut, &title, &within);
     }
-    top + 2.0 * step
+    top + set.height()
+}
+
+/// The marks of the slab in a short table: what the sheet shows, as the schedule lists it.
+pub fn bar_list(paper: &mut Paper, v: &View, model: &SlabModel, area: &Area, top: f64) {
+    let y = heading(paper, v, area, top, &format!("Marks of slab {}", model.mark));
+    let widths = [14.0, 16.0, 14.0, 20.0, 16.0, 14.0];
+    let heads = ["Mark", "Type", "No.", "Length", "Shape", "Layer"];
+    let line = |paper: &mut Paper, y: f64, cells: &[String], weight: Weight, mark: &str| {
+        let mut x = area.min[0];
+        for (i, (cell, width)) in cells.iter().zip(widths).enumerate() {
+            let right = matches!(i, 2 | 3);
+            let own = Lettering { layer: Layer::Text, mark: mark.into(), height: v.note, weight };
+            let spot = if right {
+                Spot { at: [x + width - 5.0, y], anchor: Anchor::End, upward: false }
+            } else {
+                Spot { at: [x, y], anchor: Anchor::Start, upward: false }
+            };
+            paper.text(&own, spot, cell);
+            x += width;
+        }
+    };
+    let mut at = y + v.note;
+    line(paper, at, &heads.map(str::to_string), Weight::Medium, "");
+    paper.scene.line(Layer::Text, &[[area.min[0], at + 1.4], [area.min[0] + 92.0, at + 1.4]], Pen::solid(v.pens.thin));
+    for bar in &model.bars {
+        at += LIST_ROW;
+        let cells = [bar.mark.clone(), bar.type_size(), bar.total().to_string(), bar.length.to_string(), bar.shape.to_string(), bar.layer.name().to_string()];
+        line(paper, at, &cells, Weight::Regular, &bar.mark);
+    }
+}
+
+const LIST_ROW: f64 = 4.6;
+
+pub fn bar_list_height(model: &SlabModel) -> f64 {
+    14.0 + LIST_ROW * (model.bars.len() + 1) as f64
 }
 
 /// A small section that names the layers and the order of laying.
@@ -159,12 +215,12 @@ pub fn notes(paper: &mut Paper, v: &View, texts: &[String], area: &Area, top: f6
     y
 }
 
-/// Height that notes, legend, key and close-ups take in a column of this width, mm.
-pub fn height(v: &View, slab: &Slab, texts: &[String], width: f64) -> f64 {
+/// Height that notes, legend and key take in a column of this width, mm.
+pub fn height(v: &View, texts: &[String], width: f64) -> f64 {
     let lines: usize = texts.iter().map(|t| wrap(t, v.note, width - 7.0).len()).sum();
     let notes = 7.0 + lines as f64 * (v.note + 1.7) + texts.len() as f64 * 0.5;
     let legend = 7.0 + 12.0 * (v.note + 1.9) + 3.0;
-    notes + legend + 33.0 + 2.0 * close_up_height(slab, close_up_scale(width)) + 12.0
+    notes + legend + 33.0 + 12.0
 }
 
 /// The stamp over the title block, framed.

@@ -1,6 +1,7 @@
 //! Sections: along the span as a band, and close-ups of slab ends and side edges. Bars stand at their true levels.
 
 use super::paper::{Area, Lettering, Paper, Spot};
+use super::plan_view::level_dimension;
 use super::view::View;
 use crate::base::{mm, num};
 use crate::job::Slab;
@@ -84,7 +85,8 @@ impl Cut<'_> {
             }
             let (a, b) = (from.max(self.low), to.min(self.high));
             let middle = (self.x(a) + self.x(b)) / 2.0;
-            let foot_line = [[self.x(a), foot], [middle - 0.8, foot], [middle - 0.3, foot - 1.0], [middle + 0.3, foot + 1.0], [middle + 0.8, foot], [self.x(b), foot]];
+            let foot_line =
+                [[self.x(a), foot], [middle - 0.8, foot], [middle - 0.3, foot - 1.0], [middle + 0.3, foot + 1.0], [middle + 0.8, foot], [self.x(b), foot]];
             paper.line(Layer::Concrete, "", &foot_line, Pen::solid(v.pens.thin));
             at = at.max(to);
             // A support that reaches past the slab end has a top of its own there.
@@ -104,7 +106,12 @@ impl Cut<'_> {
             } else {
                 let (y0, y1) = (self.y(h) - 1.5, self.y(0.0) + 1.5);
                 let m = (y0 + y1) / 2.0;
-                paper.line(Layer::Concrete, "", &[[x, y0], [x, m - 0.8], [x - 1.0, m - 0.3], [x + 1.0, m + 0.3], [x, m + 0.8], [x, y1]], Pen::solid(v.pens.thin));
+                paper.line(
+                    Layer::Concrete,
+                    "",
+                    &[[x, y0], [x, m - 0.8], [x - 1.0, m - 0.3], [x + 1.0, m + 0.3], [x, m + 0.8], [x, y1]],
+                    Pen::solid(v.pens.thin),
+                );
             }
         }
     }
@@ -159,7 +166,12 @@ impl Cut<'_> {
             let clipped = clip(&rounded, self.low, self.high);
             for piece in clipped {
                 let paper_line: Vec<[f64; 2]> = piece.iter().map(|p| [self.x(p[0]), self.y(p[1])]).collect();
-                paper.line(self.ink(bar), &bar.mark, &paper_line, Pen::solid(if matches!(bar.layer, BarLayer::B2 | BarLayer::T2) { v.pens.other } else { v.pens.main }));
+                paper.line(
+                    self.ink(bar),
+                    &bar.mark,
+                    &paper_line,
+                    Pen::solid(if matches!(bar.layer, BarLayer::B2 | BarLayer::T2) { v.pens.other } else { v.pens.main }),
+                );
                 let longest = piece.windows(2).max_by(|a, b| (a[0][0] - a[1][0]).abs().total_cmp(&(b[0][0] - b[1][0]).abs()));
                 if let Some(w) = longest {
                     points.push((bar.mark.clone(), [self.x((w[0][0] + w[1][0]) / 2.0), self.y((w[0][1] + w[1][1]) / 2.0)]));
@@ -206,32 +218,66 @@ impl Cut<'_> {
 }
 
 /// A close-up with its title and the marks in it.
-pub fn close_up(paper: &mut Paper, v: &View, cut: &Cut, title: &str) {
+pub fn close_up(paper: &mut Paper, v: &View, cut: &Cut, title: &str, within: &Area) {
     let points = cut.draw(paper, v, 7.0);
     let heading = Lettering { layer: Layer::Text, mark: String::new(), height: v.note, weight: Weight::Medium };
     let x = cut.corner[0];
     paper.text(&heading, Spot { at: [x, cut.corner[1] - 11.0], anchor: Anchor::Start, upward: false }, title);
     thickness(paper, v, cut);
-    point_at(paper, v, cut, points);
+    lengths(paper, v, cut);
+    point_at(paper, v, cut, points, within);
+}
+
+/// What a fixer needs at an edge: the bearing, and the legs back of closing bars from their outer face.
+fn lengths(paper: &mut Paper, v: &View, cut: &Cut) {
+    let (from, to) = cut.concrete_extent();
+    let soffit = cut.y(0.0);
+    let mut rows = soffit + 13.5;
+    for (a, b) in cut.holders() {
+        let (a, b) = (a.max(from), b.min(to));
+        if a >= cut.low - 0.5 && b <= cut.high + 0.5 && b > a {
+            level_dimension(paper, v, cut.x(a), cut.x(b), rows, &format!("bearing {}", mm(b - a)));
+            rows += 5.5;
+        }
+    }
+    // The shortest closing leg that ends within the view.
+    let across = 1 - cut.axis;
+    let closing = cut.model.bars.iter().filter(|b| matches!(b.shape, "21" | "13") && b.is_along_span() == (cut.axis == 0));
+    let legs = closing
+        .flat_map(|b| b.sets.iter().map(move |s| (b, s)))
+        .filter(|(_, s)| cut.axis == 0 || cut.is_near(s.axis[0][across], s.step[across] * f64::from(s.count.saturating_sub(1))));
+    let seen = legs.filter_map(|(bar, set)| {
+        let half = f64::from(bar.size) / 2.0;
+        let (first, last) = (set.axis.first()?, set.axis.last()?);
+        let end = if first[2] < last[2] { first } else { last };
+        let face = set.axis.windows(2).find(|w| w[0][cut.axis] == w[1][cut.axis]).map(|w| w[0][cut.axis])?;
+        let outer = if end[cut.axis] > face { face - half } else { face + half };
+        let inside = |x: f64| x >= cut.low && x <= cut.high;
+        (inside(end[cut.axis]) && inside(outer)).then_some((bar, outer, end[cut.axis]))
+    });
+    if let Some((bar, outer, end)) = seen.min_by(|a, b| (a.1 - a.2).abs().total_cmp(&(b.1 - b.2).abs())) {
+        level_dimension(paper, v, cut.x(outer), cut.x(end), rows, &format!("{} leg {}", bar.mark, mm((end - outer).abs())));
+    }
 }
 
 /// Marks with leaders: above the slab for what lies in its upper half, below for the rest, spread so that they do not meet.
-fn point_at(paper: &mut Paper, v: &View, cut: &Cut, mut points: Vec<(String, [f64; 2])>) {
+fn point_at(paper: &mut Paper, v: &View, cut: &Cut, mut points: Vec<(String, [f64; 2])>, within: &Area) {
     let lettering = |mark: &str| Lettering { layer: Layer::CallOut, mark: mark.into(), height: v.note, weight: Weight::Medium };
     points.sort_by(|a, b| a.1[0].total_cmp(&b.1[0]));
     let middle = cut.corner[1] + cut.height() / 2.0;
     for upper in [true, false] {
         let own: Vec<&(String, [f64; 2])> = points.iter().filter(|p| (p.1[1] < middle) == upper).collect();
-        let mut next = f64::NEG_INFINITY;
         for (mark, at) in own {
             let y = if upper { cut.corner[1] - 4.6 } else { cut.corner[1] + cut.height() + 8.6 };
-            let wanted = at[0] + 2.0;
-            let spots = (0..14).map(|i| Spot { at: [wanted.max(next) + f64::from(i) * 2.0, y], anchor: Anchor::Start, upward: false });
-            let within = Area::new([cut.corner[0] - 2.0, 0.0], [cut.corner[0] + cut.width() + 12.0, paper.scene.height]);
-            let (area, _) = paper.place(&lettering(mark), spots, mark, &within);
-            next = area.max[0] + 1.6;
-            let foot = if upper { [area.min[0], area.max[1]] } else { [area.min[0], area.min[1]] };
-            paper.scene.line(Layer::CallOut, &[*at, foot], Pen::solid(v.pens.thin));
+            // From close by outwards, to both sides.
+            let spots = (0..40).map(|i| {
+                let step = f64::from((i + 1) / 2) * 1.7 * if i % 2 == 0 { 1.0 } else { -1.0 };
+                Spot { at: [at[0] + 3.0 + step, y], anchor: Anchor::Middle, upward: false }
+            });
+            let (area, _) = paper.place(&lettering(mark), spots, mark, within);
+            let middle = (area.min[0] + area.max[0]) / 2.0;
+            let foot = [middle, if upper { area.max[1] + 0.3 } else { area.min[1] - 0.3 }];
+            paper.line(Layer::CallOut, mark, &[*at, foot], Pen::solid(v.pens.thin));
         }
     }
 }

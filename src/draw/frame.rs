@@ -84,8 +84,22 @@ pub fn title_block(paper: &mut Paper, job: &Job, title: &Title, width: f64) -> f
     let rows: Vec<(f64, Vec<Cell>)> = vec![
         (13.0, vec![(0.62, "Drawing number", &head.drawing, 7.0), (0.19, "Revision", &head.revision, 7.0), (0.19, "Sheet", &sheets, 3.5)]),
         (9.0, vec![(0.25, "Job number", &head.number, 3.5), (0.25, "Date", &date, 3.5), (0.5, "Scales", &title.scales, 2.5)]),
-        (9.0, vec![(0.25, "Drawn", &head.drawn_by, 2.5), (0.25, "Checked", &head.checked_by, 2.5), (0.25, "Approved", "", 2.5), (0.25, "Status", if head.status.is_empty() { kind } else { &head.status }, 2.5)]),
-        (9.0, vec![(0.5, "Document", title.document, 2.5), (0.5, "Bar schedule", if head.schedule.is_empty() { "see the schedule of this drawing" } else { &head.schedule }, 2.5)]),
+        (
+            9.0,
+            vec![
+                (0.25, "Drawn", &head.drawn_by, 2.5),
+                (0.25, "Checked", &head.checked_by, 2.5),
+                (0.25, "Approved", "", 2.5),
+                (0.25, "Status", if head.status.is_empty() { kind } else { &head.status }, 2.5),
+            ],
+        ),
+        (
+            9.0,
+            vec![
+                (0.5, "Document", title.document, 2.5),
+                (0.5, "Bar schedule", if head.schedule.is_empty() { "see the schedule of this drawing" } else { &head.schedule }, 2.5),
+            ],
+        ),
         (10.0, vec![(1.0, "Title", &head.title, 3.5)]),
         (9.0, vec![(0.5, "Client", &head.client, 2.5), (0.5, "Site", &head.site, 2.5)]),
         (11.0, vec![(1.0, "Project", &head.project, 5.0)]),

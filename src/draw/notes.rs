@@ -35,7 +35,7 @@ pub fn notes(job: &Job, model: &BarModel) -> Vec<String> {
     }
     notes.push(note("layers", &[]));
     notes.push(note("spacing", &[]));
-    notes.push(laps(job, model, &note));
+    notes.push(laps(job, model, note));
     for (slab, placed) in job.slabs.iter().zip(&model.slabs) {
         if let Some(height) = chair_height(placed.thickness, &placed.bars) {
             notes.push(note("chairs", &[("slab", slab.mark.clone()), ("height", mm(height))]));
@@ -61,7 +61,7 @@ pub fn notes(job: &Job, model: &BarModel) -> Vec<String> {
     notes
 }
 
-fn laps(job: &Job, model: &BarModel, note: &dyn Fn(&str, &[(&str, String)]) -> String) -> String {
+fn laps(job: &Job, model: &BarModel, note: impl Fn(&str, &[(&str, String)]) -> String) -> String {
     let laps = model.slabs.iter().flat_map(|s| &s.laps);
     let by_size = laps.map(|(size, length)| (*size, *length)).into_grouping_map().max_by(|_, a, b| a.total_cmp(b));
     if by_size.is_empty() {
@@ -75,7 +75,9 @@ fn laps(job: &Job, model: &BarModel, note: &dyn Fn(&str, &[(&str, String)]) -> S
 /// Height of chairs: from the top of B2 to the underside of T2, where a slab has both.
 fn chair_height(thickness: f64, bars: &[BarType]) -> Option<f64> {
     let middle = thickness / 2.0;
-    let level = |layer: Layer, role: Role| bars.iter().filter(move |b| b.layer == layer && b.role == role).flat_map(|b| b.sets.iter().map(move |s| (s.axis[0][2], f64::from(b.size) / 2.0)));
+    let level = |layer: Layer, role: Role| {
+        bars.iter().filter(move |b| b.layer == layer && b.role == role).flat_map(|b| b.sets.iter().map(move |s| (s.axis[0][2], f64::from(b.size) / 2.0)))
+    };
     let bottom = level(Layer::B2, Role::DistributionBottom).map(|(z, half)| z + half).fold(0.0, f64::max);
     let top = level(Layer::T2, Role::DistributionTop).map(|(z, half)| z - half).fold(f64::INFINITY, f64::min);
     (bottom > 0.0 && top.is_finite() && top > middle * 0.5 && top > bottom).then(|| crate::base::down(top - bottom, 5.0))

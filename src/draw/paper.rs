@@ -125,7 +125,8 @@ impl Paper {
     pub fn text(&mut self, lettering: &Lettering, spot: Spot, text: &str) -> Area {
         let area = text_area(spot.at, lettering.height, text, spot.anchor, lettering.weight, spot.upward);
         self.texts.push(area);
-        let shape = Shape::Text { at: spot.at, height: lettering.height, text: text.into(), anchor: spot.anchor, weight: lettering.weight, upward: spot.upward };
+        let shape =
+            Shape::Text { at: spot.at, height: lettering.height, text: text.into(), anchor: spot.anchor, weight: lettering.weight, upward: spot.upward };
         self.scene.push(lettering.layer, &lettering.mark, shape);
         area
     }

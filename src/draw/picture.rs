@@ -12,7 +12,7 @@ pub fn shape(paper: &mut Paper, bar: &BarType, min: [f64; 2], max: [f64; 2], pen
     let mut heading = 0.0f64;
     let mut at = [0.0f64, 0.0];
     let mut points = vec![at];
-    let mut legs: Vec<(char, [f64; 2], f64)> = Vec::new();
+    let mut legs: Vec<(char, [f64; 2], f64, f64)> = Vec::new();
     for part in &code.path {
         match part {
             Walk::Leg { leg } => {
@@ -21,7 +21,7 @@ pub fn shape(paper: &mut Paper, bar: &BarType, min: [f64; 2], max: [f64; 2], pen
                 // Short legs are drawn longer than they are, so that they can be read.
                 let length = 0.35 + 0.65 * share;
                 let to = [at[0] + length * heading.cos(), at[1] - length * heading.sin()];
-                legs.push((letter, [(at[0] + to[0]) / 2.0, (at[1] + to[1]) / 2.0], heading));
+                legs.push((letter, [(at[0] + to[0]) / 2.0, (at[1] + to[1]) / 2.0], heading, length));
                 at = to;
                 points.push(at);
             }
@@ -51,14 +51,19 @@ pub fn shape(paper: &mut Paper, bar: &BarType, min: [f64; 2], max: [f64; 2], pen
     }
     let lettering = Lettering { layer: Layer::Text, mark: String::new(), height: 1.8, weight: Weight::Regular };
     let centre = [drawn.iter().map(|p| p[0]).sum::<f64>() / drawn.len() as f64, drawn.iter().map(|p| p[1]).sum::<f64>() / drawn.len() as f64];
-    for (letter, place, heading) in legs {
+    let last = legs.len() - 1;
+    for (i, (letter, place, heading, length)) in legs.into_iter().enumerate() {
         let p = map(place);
-        // The letter stands on the outer side of its leg.
-        let upright = heading.sin().abs() > 0.7;
-        let at = if upright {
+        let (dx, dy) = (heading.cos() * length * scale / 2.0, -heading.sin() * length * scale / 2.0);
+        let at = if heading.sin().abs() > 0.7 {
+            // Beside an upright leg, on its outer side.
             [p[0] + if p[0] >= centre[0] { 1.9 } else { -1.9 }, p[1] + 0.9]
+        } else if i == 0 || i == last {
+            // Past the free end of an end leg.
+            let sign = if i == 0 { -1.0 } else { 1.0 };
+            [p[0] + sign * dx + (sign * dx).signum() * 1.7, p[1] + sign * dy + 0.9]
         } else {
-            [p[0], if p[1] <= centre[1] { p[1] - 0.7 } else { p[1] + 2.4 }]
+            [p[0], p[1] - 0.7]
         };
         paper.text(&lettering, Spot { at, anchor: Anchor::Middle, upward: false }, &letter.to_string());
     }

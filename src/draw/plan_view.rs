@@ -26,6 +26,12 @@ pub struct PlanView<'a> {
     pub gap: Option<(f64, f64)>,
 }
 
+/// A call-out that waits for its place: where it may stand, and what it points at.
+struct Waiting {
+    spots: Vec<Spot>,
+    target: [f64; 2],
+}
+
 /// Paper kept for the gap of a broken view, mm.
 pub const BREAK: f64 = 6.0;
 
@@ -57,17 +63,19 @@ impl PlanView<'_> {
         let along: Vec<&Occurrence> = shown.iter().filter(|o| o.bar.is_along_span()).collect();
         let across: Vec<&Occurrence> = shown.iter().filter(|o| !o.bar.is_along_span()).collect();
         // All lines first, then the texts, so that every text sees every line.
-        let mut waiting: Vec<(Vec<Spot>, &Occurrence)> = Vec::new();
+        let mut waiting: Vec<(Waiting, &Occurrence)> = Vec::new();
         for (i, occurrence) in along.iter().enumerate() {
-            waiting.extend(self.along(paper, occurrence, i));
+            waiting.extend(self.along(paper, occurrence, i, &along).map(|w| (w, *occurrence)));
         }
         for occurrence in &across {
-            waiting.extend(self.across(paper, occurrence));
+            waiting.extend(self.across(paper, occurrence).map(|w| (w, *occurrence)));
         }
         self.sides(paper);
-        let within = Area::new([self.view.x(self.view.low) - 24.0, self.top - 14.0], [self.view.x(self.view.high) + 24.0, self.top + self.height() + 14.0]);
-        for (spots, occurrence) in waiting {
-            self.call_out(paper, spots, occurrence, &within);
+        let within = Area::new([self.view.x(self.view.low) - 24.0, self.top - 9.0], [self.view.x(self.view.high) + 24.0, self.top + self.height() + 9.0]);
+        // Full call-outs first: a mark alone finds room more easily.
+        waiting.sort_by_key(|(_, o)| !o.first);
+        for (place, occurrence) in waiting {
+            self.call_out(paper, place, occurrence, &within);
         }
     }
 
@@ -75,11 +83,7 @@ impl PlanView<'_> {
     fn is_here(&self, occurrence: &Occurrence) -> bool {
         let is_bottom = matches!(occurrence.bar.layer, BarLayer::B1 | BarLayer::B2);
         let (low, high) = occurrence.extent();
-        let seen = if occurrence.bar.is_along_span() {
-            self.view.clip(low, high).is_some()
-        } else {
-            occurrence.lines(0).iter().any(|x| self.view.shows(*x))
-        };
+        let seen = if occurrence.bar.is_along_span() { self.view.clip(low, high).is_some() } else { occurrence.lines(0).iter().any(|x| self.view.shows(*x)) };
         (self.face == Face::Bottom) == is_bottom && seen
     }
 
@@ -126,7 +130,7 @@ impl PlanView<'_> {
     }
 
     /// Bars along the span: one bar (two of a turned pair), its ends, and the upright line over its zone.
-    fn along<'o, 'm>(&self, paper: &mut Paper, occurrence: &'o Occurrence<'m>, order: usize) -> Option<(Vec<Spot>, &'o Occurrence<'m>)> {
+    fn along(&self, paper: &mut Paper, occurrence: &Occurrence, order: usize, all: &[&Occurrence]) -> Option<Waiting> {
         let v = self.view;
         let (low, high) = occurrence.extent();
         let (from, to) = v.clip(low, high)?;
@@ -146,9 +150,9 @@ impl PlanView<'_> {
         }
         if held {
             let y = self.y(first);
-            return Some((along_level(v.x(from), v.x(to), y, v.call_out), occurrence));
+            return Some(Waiting { spots: along_level(v.x(from), v.x(to), y, v.call_out), target: [v.x(from + 0.3 * (to - from)), y] });
         }
-        let station = self.indicator(occurrence, from, to);
+        let station = self.indicator(occurrence, from, to, all);
         let x = v.x(station);
         let thin = Pen::solid(v.pens.thin);
         let (y0, y1) = (self.y(last), self.y(first));
@@ -157,8 +161,7 @@ impl PlanView<'_> {
             tick(paper, Layer::CallOut, mark, [x, y], v.pens.thin);
         }
         paper.ring(Layer::CallOut, mark, [x, self.y(y)], 0.9, thin);
-        let right_first = occurrence.extent().0 > low - 1.0 && order % 2 == 1;
-        Some((along_upright(x, y0, y1, v.call_out, right_first), occurrence))
+        Some(Waiting { spots: along_upright(x, y0, y1, v.call_out, order % 2 == 1), target: [x, self.y(y)] })
     }
 
     fn in_view(&self, across: f64) -> f64 {
@@ -169,13 +172,12 @@ impl PlanView<'_> {
     }
 
     /// Where the upright line of a set stands: in the span, clear of its faces and of the line of the other part of its zone.
-    fn indicator(&self, occurrence: &Occurrence, from: f64, to: f64) -> f64 {
+    fn indicator(&self, occurrence: &Occurrence, from: f64, to: f64, all: &[&Occurrence]) -> f64 {
         let st = &self.model.stations;
         let zone = occurrence.zone;
-        let own = Occurrence::of(self.model);
         // Parts of one zone share the room: the first takes the left place, the next the next.
-        let parts: Vec<&Occurrence> = own.iter().filter(|o| o.zone == zone && o.bar.is_along_span()).collect();
-        let index = parts.iter().position(|o| o.bar.mark == occurrence.bar.mark && o.extent() == occurrence.extent()).unwrap_or(0);
+        let parts = all.iter().filter(|o| o.zone == zone);
+        let index = parts.into_iter().position(|o| o.bar.mark == occurrence.bar.mark && o.extent() == occurrence.extent()).unwrap_or(0);
         let paper = |mm: f64| mm * self.view.scale;
         if occurrence.bar.role == Role::SpanBottom {
             let middle = (from + to) / 2.0;
@@ -210,7 +212,7 @@ impl PlanView<'_> {
     }
 
     /// Bars across the slab: one bar, and the level line over its zone.
-    fn across<'o, 'm>(&self, paper: &mut Paper, occurrence: &'o Occurrence<'m>) -> Option<(Vec<Spot>, &'o Occurrence<'m>)> {
+    fn across(&self, paper: &mut Paper, occurrence: &Occurrence) -> Option<Waiting> {
         let v = self.view;
         let lines: Vec<f64> = occurrence.lines(0).into_iter().filter(|x| v.shows(*x)).collect();
         let (first, last) = (*lines.first()?, *lines.last()?);
@@ -234,7 +236,8 @@ impl PlanView<'_> {
         }
         let x = v.x(station);
         if held {
-            return Some((along_upright(x, self.y(y_high), self.y(y_low), v.call_out, station < self.model.stations.spans[0].left_face), occurrence));
+            let spots = along_upright(x, self.y(y_high), self.y(y_low), v.call_out, station > self.model.stations.spans[0].left_face);
+            return Some(Waiting { spots, target: [x, self.y(y_low + 0.45 * (y_high - y_low))] });
         }
         let y = if edge_bar {
             (y_low + y_high) / 2.0
@@ -252,35 +255,34 @@ impl PlanView<'_> {
         paper.ring(Layer::CallOut, mark, [x, y], 0.9, thin);
         let mut spots = along_level(v.x(first), v.x(last), y, v.call_out);
         spots.extend(along_upright(x, self.y(y_high), self.y(y_low), v.call_out, true));
-        Some((spots, occurrence))
+        Some(Waiting { spots, target: [x, y] })
     }
 
-    fn call_out(&self, paper: &mut Paper, spots: Vec<Spot>, occurrence: &Occurrence, within: &Area) {
+    fn call_out(&self, paper: &mut Paper, place: Waiting, occurrence: &Occurrence, within: &Area) {
         let v = self.view;
         let lettering = Lettering { layer: Layer::CallOut, mark: occurrence.bar.mark.clone(), height: v.call_out, weight: Weight::Medium };
         let text = occurrence.call_out();
-        let anchor_at = spots.first().map_or([0.0, 0.0], |s| s.at);
-        let free = spots.iter().copied().any(|s| {
+        let is_free = |s: &Spot| {
             let area = super::paper::text_area(s.at, v.call_out, &text, s.anchor, Weight::Medium, s.upward);
             within.holds(&area) && paper.conflicts(&area) == 0
-        });
-        if free {
-            paper.place(&lettering, spots, &text, within);
+        };
+        if let Some(spot) = place.spots.iter().copied().find(is_free) {
+            paper.text(&lettering, spot, &text);
             return;
         }
-        // No room on its line: further off, with a leader to the line.
+        // No room on its line: further off, with a leader to what it names.
+        let target = place.target;
         let mut away = Vec::new();
-        for ring in 1..=14 {
-            for (dx, dy) in [(1.0, 0.0), (-1.0, 0.0), (0.0, 1.0), (0.0, -1.0), (0.7, 0.7), (-0.7, 0.7), (0.7, -0.7), (-0.7, -0.7)] {
-                let reach = f64::from(ring) * 5.0;
-                let at = [anchor_at[0] + dx * reach, anchor_at[1] + dy * reach];
-                away.push(Spot { at, anchor: Anchor::Middle, upward: false });
-                away.push(Spot { at, anchor: Anchor::Middle, upward: true });
+        for ring in 1..=30 {
+            let reach = 4.0 + 3.0 * f64::from(ring);
+            for (dx, dy) in [(1.0, -0.6), (-1.0, -0.6), (1.0, 0.6), (-1.0, 0.6), (0.4, -1.0), (-0.4, -1.0), (0.4, 1.0), (-0.4, 1.0)] {
+                let at = [target[0] + dx * reach, target[1] + dy * reach];
+                away.push(Spot { at, anchor: if dx > 0.0 { Anchor::Start } else { Anchor::End }, upward: false });
+                away.push(Spot { at, anchor: if dy > 0.0 { Anchor::End } else { Anchor::Start }, upward: true });
             }
         }
         let (area, _) = paper.place(&lettering, away, &text, within);
-        let to = nearest_corner(&area, anchor_at);
-        paper.scene.line(Layer::CallOut, &[anchor_at, to], Pen::solid(v.pens.thin));
+        leader(paper, &lettering.mark, target, &area, v.pens.thin);
     }
 
     /// Names of the side edges and the width, at the left of the plan.
@@ -289,7 +291,7 @@ impl PlanView<'_> {
         let lettering = Lettering { layer: Layer::Text, mark: String::new(), height: v.note, weight: Weight::Regular };
         let left = v.x(self.model.stations.start.max(v.low));
         let (y0, y1) = (self.y(self.slab.width.value), self.y(0.0));
-        let x = left - 9.0;
+        let x = left - 17.0;
         upright_dimension(paper, v, x, y0, y1, left - 1.0, &num(self.slab.width.value, 0));
         for (side, y) in [(0, y1), (1, y0)] {
             let text = match self.slab.edges[side] {
@@ -327,8 +329,11 @@ fn pieces_at(occurrence: &Occurrence, station: f64) -> Vec<(f64, f64)> {
     pieces
 }
 
-fn nearest_corner(area: &Area, to: [f64; 2]) -> [f64; 2] {
-    [to[0].clamp(area.min[0], area.max[0]), to[1].clamp(area.min[1], area.max[1])]
+/// A thin line from a call-out to what it names.
+fn leader(paper: &mut Paper, mark: &str, target: [f64; 2], area: &Area, width: f64) {
+    let from = [target[0].clamp(area.min[0], area.max[0]), target[1].clamp(area.min[1], area.max[1])];
+    paper.line(Layer::CallOut, mark, &[from, target], Pen::solid(width));
+    paper.dot(Layer::CallOut, mark, target, 0.5);
 }
 
 /// A terminator: a short stroke at 45°.

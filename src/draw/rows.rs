@@ -85,7 +85,13 @@ fn bar(paper: &mut Paper, v: &View, occurrence: &Occurrence, y: f64) {
         .axis
         .iter()
         .map(|p| {
-            let turned = if (p[2] - main).abs() < 0.5 { 0.0 } else if p[2] < main { UPRIGHT } else { -UPRIGHT };
+            let turned = if (p[2] - main).abs() < 0.5 {
+                0.0
+            } else if p[2] < main {
+                UPRIGHT
+            } else {
+                -UPRIGHT
+            };
             [v.x(p[0].clamp(v.low, v.high)), y + if top - bottom < 0.5 { 0.0 } else { turned }]
         })
         .collect();

@@ -49,8 +49,7 @@ pub fn schedule(job: &Job, model: &BarModel) -> Vec<Scene> {
     }
     let summary = steel::summary(model);
     let summary_rows = 20;
-    let summary_pages: Vec<Table> =
-        summary.rows.chunks(summary_rows).map(|rows| Table { columns: summary.columns.clone(), rows: rows.to_vec() }).collect();
+    let summary_pages: Vec<Table> = summary.rows.chunks(summary_rows).map(|rows| Table { columns: summary.columns.clone(), rows: rows.to_vec() }).collect();
     let of = pages.len() + summary_pages.len();
     let mut scenes: Vec<Scene> = pages.iter().enumerate().map(|(i, rows)| bar_page(job, rows, i + 1, of)).collect();
     for (i, table) in summary_pages.iter().enumerate() {

@@ -1,6 +1,6 @@
 //! The reinforcement sheet: four bands on one station line, the column beside them, the frame round both.
 
-use super::column;
+use super::column::{self, CloseUps};
 use super::detail::{Cut, name_layers};
 use super::frame::{self, Title};
 use super::notes;
@@ -58,16 +58,23 @@ fn band_area(size: &SheetSize) -> Area {
     Area::new([space.min[0] + 4.0, space.min[1] + 4.0], [space.max[0] - column_width(size) - 8.0, space.max[1] - 4.0])
 }
 
+/// The room between the bands and the column, where it is wide enough for close-ups.
+fn beside(size: &SheetSize, view: &View) -> Option<Area> {
+    let area = band_area(size);
+    let left = view.x(view.high) + MARGIN + 10.0;
+    let width = (area.max[0] - left).min(230.0);
+    let left = left + (area.max[0] - left - width) / 2.0;
+    (width >= 130.0).then(|| Area::new([left, area.min[1]], [left + width, area.max[1]]))
+}
+
 /// Scale of levels in the section: 1:10 where the plan is drawn at 1:50 or larger, else 1:20.
 fn level_scale(scale: f64) -> f64 {
     if scale <= 50.0 { 10.0 } else { 20.0 }
 }
 
-/// Height of all bands, mm, with the plans cut down by a gap across the slab.
+/// Height of all bands with the scale bar, mm, the plans cut down by a gap across the slab.
 fn bands_height(slab: &Slab, model: &SlabModel, view: &View, gap: f64) -> f64 {
-    let plan = (slab.width.value - gap) / view.scale + if gap > 0.0 { BREAK } else { 0.0 };
-    let rows = Rows::of(model, view, true).height() + Rows::of(model, view, false).height();
-    HEADS + 2.0 * (TITLE + plan + UNDER) + rows + 2.0 * TITLE + slab.thickness.value / level_scale(view.scale) + STUBS + 8.0 + 10.0
+    Bands::of(slab, model, view, gap, 0.0).end + 12.0
 }
 
 /// The sheet and scale that fit: the largest scale first, for each the smallest sheet. Where none does, the slab is cut at supports
@@ -84,12 +91,15 @@ fn fits<'a>(job: &Job, slab: &Slab, model: &SlabModel, texts: &[String]) -> Vec<
     let (low, high) = (st.start.min(st.supports[0].centre), st.end.max(st.supports[st.last()].centre));
     let column_fits = |size: &SheetSize, view: &View| {
         let room = frame::space(size).height() - frame::TITLE_HEIGHT - 16.0;
-        column::height(view, slab, texts, column_width(size) - 6.0) <= room
+        let width = column_width(size) - 6.0;
+        let beside = beside(size, view).is_some_and(|area| CloseUps::in_width(slab, area.width()).height() <= area.height());
+        let close_ups = if beside { 0.0 } else { CloseUps::in_width(slab, width).height() };
+        column::height(view, texts, width) + close_ups <= room
     };
     for scale in &scales {
         for size in &sizes {
             let area = band_area(size);
-            let view = View::new(size, *scale, low, high, 0.0);
+            let view = View::new(size, *scale, low, high, band_area(size).min[0] + MARGIN);
             let wide = (high - low) / scale + 2.0 * MARGIN <= area.width();
             if wide && bands_height(slab, model, &view, 0.0) <= area.height() && column_fits(size, &view) {
                 return vec![Fit { size, scale: *scale, low, high, gap: None }];
@@ -147,11 +157,26 @@ fn sheet(job: &Job, slab: &Slab, model: &SlabModel, fit: &Fit, checks: &[Vec<Che
     let top = frame::title_block(&mut paper, job, &title, column_width(size));
     let space = frame::space(size);
     let column = Area::new([space.max[0] - column_width(size) + 3.0, space.min[1] + 4.0], [space.max[0] - 3.0, top - 2.0]);
-    paper.line(Layer::Frame, "", &[[space.max[0] - column_width(size), space.min[1]], [space.max[0] - column_width(size), top]], Pen::solid(size.pens.concrete));
+    paper.line(
+        Layer::Frame,
+        "",
+        &[[space.max[0] - column_width(size), space.min[1]], [space.max[0] - column_width(size), top]],
+        Pen::solid(size.pens.concrete),
+    );
     if let Some(text) = notes::stamp(job, checks) {
         column::stamp(&mut paper, &view, &text, &column, top);
     }
-    let mut y = column::close_ups(&mut paper, &view, slab, model, &column, column.min[1]);
+    let mut y = column.min[1];
+    // Close-ups stand beside the bands where the sheet has room there, else at the head of the column.
+    match beside(size, &view).filter(|area| CloseUps::in_width(slab, area.width()).height() <= area.height()) {
+        Some(area) => {
+            let below = column::close_ups(&mut paper, &view, slab, model, &area, area.min[1]);
+            if below + column::bar_list_height(model) <= area.max[1] {
+                column::bar_list(&mut paper, &view, model, &area, below);
+            }
+        }
+        None => y = column::close_ups(&mut paper, &view, slab, model, &column, y),
+    }
     y = column::layer_key(&mut paper, &view, model, &column, y);
     y = column::legend(&mut paper, &view, model, &column, y);
     column::notes(&mut paper, &view, texts, &column, y);
@@ -172,57 +197,76 @@ fn sheet(job: &Job, slab: &Slab, model: &SlabModel, fit: &Fit, checks: &[Vec<Che
     scene
 }
 
+/// Paper heights of the bands of a sheet, from the top.
+struct Bands<'m> {
+    bottom_plan: f64,
+    top_plan: f64,
+    top_rows: f64,
+    section: f64,
+    bottom_rows: f64,
+    end: f64,
+    rows: [Rows<'m>; 2],
+}
+
+impl<'m> Bands<'m> {
+    fn of(slab: &Slab, model: &'m SlabModel, view: &View, gap: f64, top: f64) -> Bands<'m> {
+        let plan = (slab.width.value - gap) / view.scale + if gap > 0.0 { BREAK } else { 0.0 };
+        let rows = [Rows::of(model, view, false), Rows::of(model, view, true)];
+        let bottom_plan = top + HEADS;
+        let top_plan = bottom_plan + TITLE + plan + UNDER;
+        let top_rows = top_plan + TITLE + plan + UNDER;
+        let section = top_rows + TITLE + rows[0].height();
+        let bottom_rows = section + TITLE + slab.thickness.value / level_scale(view.scale) + STUBS - 2.0;
+        let end = bottom_rows + TITLE + rows[1].height() + 4.0;
+        Bands { bottom_plan, top_plan, top_rows, section, bottom_rows, end, rows }
+    }
+}
+
 fn bands(paper: &mut Paper, view: &View, slab: &Slab, model: &SlabModel, fit: &Fit, top: f64) {
     let levels = level_scale(fit.scale);
-    let mut y = top + HEADS;
-    let mut grid_end = y;
+    let bands = Bands::of(slab, model, view, fit.gap.map_or(0.0, |(a, b)| b - a), top);
     heads(paper, view, model, top);
     let x = view.x(view.low) - MARGIN + 4.0;
     let scale = fit.scale;
     let broken = if fit.gap.is_some() { ", broken across" } else { "" };
-    for (face, name) in [(Face::Bottom, "BOTTOM  B1 and B2"), (Face::Top, "TOP  T1, T2, ends and edges")] {
-        view_title(paper, view, x, y, &format!("Slab {}: {name}", slab.mark), &format!("plan 1:{scale}{broken}"));
-        let plan = PlanView { view, slab, model, face, top: y + TITLE, gap: fit.gap };
-        plan.draw(paper);
-        y += TITLE + plan.height() + UNDER;
+    let titles = [
+        (bands.bottom_plan, format!("Slab {}: BOTTOM  B1 and B2", slab.mark), format!("plan 1:{scale}{broken}")),
+        (bands.top_plan, format!("Slab {}: TOP  T1, T2, ends and edges", slab.mark), format!("plan 1:{scale}{broken}")),
+        (bands.top_rows, "Top bars drawn out".to_string(), format!("stations 1:{scale}, uprights not to scale")),
+        (bands.section, "Section along the span".to_string(), format!("stations 1:{scale}, levels 1:{levels}")),
+        (bands.bottom_rows, "Bottom bars drawn out".to_string(), format!("stations 1:{scale}")),
+    ];
+    let areas: Vec<Area> = titles.iter().map(|(y, title, note)| view_title(paper, view, x, *y, title, note)).collect();
+    grids(paper, view, model, top + 9.2, bands.end + 2.0, &areas);
+    for (face, y) in [(Face::Bottom, bands.bottom_plan), (Face::Top, bands.top_plan)] {
+        PlanView { view, slab, model, face, top: y + TITLE, gap: fit.gap }.draw(paper);
     }
-    let top_rows = Rows::of(model, view, false);
-    view_title(paper, view, x, y, "Top bars drawn out", &format!("stations 1:{scale}, uprights not to scale"));
-    y += TITLE;
-    top_rows.draw(paper, view, model, y);
-    y += top_rows.height();
-    view_title(paper, view, x, y, "Section along the span", &format!("stations 1:{scale}, levels 1:{levels}"));
-    y += TITLE;
+    bands.rows[0].draw(paper, view, model, bands.top_rows + TITLE);
+    let low = view.low.min(model.stations.supports[0].left_face.max(view.low - 200.0));
     let cut = Cut {
         slab,
         model,
         axis: 0,
-        low: view.low.min(model.stations.supports[0].left_face.max(view.low - 200.0)),
+        low,
         high: view.high,
-        at: slab.width.value / 2.0,
+        at: 0.3 * slab.width.value,
         scale: view.scale,
         level_scale: levels,
-        corner: [view.x(view.low.min(model.stations.supports[0].left_face.max(view.low - 200.0))), y],
+        corner: [view.x(low), bands.section + TITLE],
     };
     cut.draw(paper, view, STUBS - 5.0);
     name_layers(paper, view, &cut);
-    y += cut.height() + STUBS;
-    let bottom_rows = Rows::of(model, view, true);
-    view_title(paper, view, x, y - 2.0, "Bottom bars drawn out", &format!("stations 1:{scale}"));
-    y += TITLE - 2.0;
-    bottom_rows.draw(paper, view, model, y);
-    y += bottom_rows.height();
-    rows::laps(paper, view, model, y + 3.0);
-    grid_end = grid_end.max(y + 5.0);
-    grids(paper, view, model, top + 17.0, grid_end);
-    scale_bar(paper, view, x, y + 10.0);
+    bands.rows[1].draw(paper, view, model, bands.bottom_rows + TITLE);
+    rows::laps(paper, view, model, bands.end);
+    scale_bar(paper, view, x, bands.end + 7.0);
 }
 
-fn view_title(paper: &mut Paper, v: &View, x: f64, y: f64, title: &str, note: &str) {
+fn view_title(paper: &mut Paper, v: &View, x: f64, y: f64, title: &str, note: &str) -> Area {
     let big = Lettering { layer: Layer::Text, mark: String::new(), height: tables().sheets.text.view, weight: Weight::Medium };
     let area = paper.text(&big, Spot { at: [x, y + 7.5], anchor: Anchor::Start, upward: false }, title);
     let small = Lettering { layer: Layer::Text, mark: String::new(), height: v.note, weight: Weight::Regular };
-    paper.text(&small, Spot { at: [area.max[0] + 4.0, y + 7.5], anchor: Anchor::Start, upward: false }, note);
+    let note = paper.text(&small, Spot { at: [area.max[0] + 4.0, y + 7.5], anchor: Anchor::Start, upward: false }, note);
+    Area::new(area.min, [note.max[0], area.max[1]])
 }
 
 /// Grid letters in circles, and the dimensions between them with the ends of the slab.
@@ -243,8 +287,7 @@ fn heads(paper: &mut Paper, v: &View, model: &SlabModel, top: f64) {
         }
     }
     let y = top + 22.5;
-    for (k, span) in st.spans.iter().enumerate() {
-        let _ = k;
+    for span in &st.spans {
         if v.shows(span.left_face) && v.shows(span.right_face) {
             level_dimension(paper, v, v.x(span.left_face), v.x(span.right_face), y, &format!("clear {}", mm(span.clear)));
         }
@@ -261,14 +304,17 @@ fn heads(paper: &mut Paper, v: &View, model: &SlabModel, top: f64) {
     }
 }
 
-/// Grid lines down through every band.
-fn grids(paper: &mut Paper, v: &View, model: &SlabModel, top: f64, bottom: f64) {
+/// Grid lines down through every band, broken where a title stands on them.
+fn grids(paper: &mut Paper, v: &View, model: &SlabModel, top: f64, bottom: f64, titles: &[Area]) {
     let pen = Pen { width: v.pens.thin, dash: Dash::Chain };
-    for support in &model.stations.supports {
-        if v.shows(support.centre) {
-            let x = v.x(support.centre);
-            paper.scene.line(Layer::Grid, &[[x, top - 7.8], [x, bottom]], pen);
+    for support in model.stations.supports.iter().filter(|s| v.shows(s.centre)) {
+        let x = v.x(support.centre);
+        let mut from = top;
+        for title in titles.iter().map(|t| t.grown(1.0)).filter(|t| t.min[0] < x && x < t.max[0]) {
+            paper.line(Layer::Grid, "", &[[x, from], [x, title.min[1]]], pen);
+            from = title.max[1];
         }
+        paper.line(Layer::Grid, "", &[[x, from], [x, bottom]], pen);
     }
 }
 

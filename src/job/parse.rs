@@ -22,7 +22,7 @@ pub struct Reading {
 pub fn read(bytes: &[u8], load: Loader) -> Reading {
     let source = match text(bytes) {
         Ok(source) => source,
-        Err(fault) => return Reading { job: None, faults: vec![fault], source: String::new() },
+        Err(fault) => return Reading { job: None, faults: vec![*fault], source: String::new() },
     };
     let faults = RefCell::new(Vec::new());
     let job = {
@@ -60,7 +60,9 @@ fn job(root: &Section, load: Loader) -> Option<Job> {
     let sections = root.sections("slab");
     if !root.has("slab") || sections.is_empty() {
         root.fault(
-            Fault::new("no-slab", root.span.clone(), "the file has no slab").rule("a job has at least one [[slab]]").remedy("add a [[slab]] with its supports and spans"),
+            Fault::new("no-slab", root.span.clone(), "the file has no slab")
+                .rule("a job has at least one [[slab]]")
+                .remedy("add a [[slab]] with its supports and spans"),
         );
     }
     if sections.len() > MOST_SLABS {
@@ -77,7 +79,9 @@ fn job(root: &Section, load: Loader) -> Option<Job> {
     for (i, (mark, at)) in marks.iter().enumerate() {
         if marks[..i].iter().any(|(m, _)| m == mark) {
             at.fault(
-                Fault::new("twice", at.span_of("mark"), format!("slab mark {mark:?} is used twice")).rule("a slab's mark is unique in the file").remedy("give one of them another mark"),
+                Fault::new("twice", at.span_of("mark"), format!("slab mark {mark:?} is used twice"))
+                    .rule("a slab's mark is unique in the file")
+                    .remedy("give one of them another mark"),
             );
         }
     }
@@ -118,9 +122,7 @@ pub(super) fn printed(section: &Section, key: &'static str, required: bool, most
 }
 
 fn head(section: &Section) -> Option<Head> {
-    for (key, example) in
-        [("number", "\"K417\""), ("project", "\"...\""), ("title", "\"...\""), ("drawing", "\"K417-201\""), ("revision", "\"P01\"")]
-    {
+    for (key, example) in [("number", "\"K417\""), ("project", "\"...\""), ("title", "\"...\""), ("drawing", "\"K417-201\""), ("revision", "\"P01\"")] {
         section.need(key, example);
     }
     section.need("date", "2026-05-18");

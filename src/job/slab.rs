@@ -81,9 +81,8 @@ fn counts(section: &Section, supports: &[Section], spans: &[Section]) {
                 .remedy("split it at a joint"),
         );
     } else if spans.is_empty() {
-        section.fault(
-            Fault::new("no-span", section.span.clone(), "this slab has no span").rule("a slab has at least one [[slab.span]]").remedy("add its spans"),
-        );
+        section
+            .fault(Fault::new("no-span", section.span.clone(), "this slab has no span").rule("a slab has at least one [[slab.span]]").remedy("add its spans"));
     } else if supports.len() != spans.len() + 1 {
         let at = supports.last().map_or(section.span.clone(), |s| s.span.clone());
         section.fault(
@@ -122,8 +121,12 @@ fn edges(section: &Section, width: Option<f64>) -> (Option<[Edge; 2]>, Option<[f
     for (key, edge, rests) in [("near", near, near_width), ("far", far, far_width)] {
         let (Some(edge), Some(rests)) = (edge, rests) else { continue };
         let wrong = match edge {
-            Edge::Wall | Edge::Beam if rests < 50.0 => Some((format!("the {key} edge rests {rests} mm on its {}", edge.word()), "a held edge rests at least 50 mm on its wall or beam")),
-            Edge::Free | Edge::Joint if rests > 0.0 => Some((format!("the {key} edge is {} and rests {rests} mm", edge.word()), "a free edge or a joint rests on nothing")),
+            Edge::Wall | Edge::Beam if rests < 50.0 => {
+                Some((format!("the {key} edge rests {rests} mm on its {}", edge.word()), "a held edge rests at least 50 mm on its wall or beam"))
+            }
+            Edge::Free | Edge::Joint if rests > 0.0 => {
+                Some((format!("the {key} edge is {} and rests {rests} mm", edge.word()), "a free edge or a joint rests on nothing"))
+            }
             _ => None,
         };
         if let Some((message, rule)) = wrong {
@@ -286,9 +289,13 @@ fn fits(section: &Section, slab: &Slab, supports: &[Section], spans: &[Section])
     let stack = slab.cover.bottom.value + slab.cover.top.value + layers;
     if stack > slab.thickness.value {
         section.fault(
-            Fault::new("depth", section.span_of("thickness"), format!("covers and four layers need {} mm, the slab is {} mm", mm(stack), mm(slab.thickness.value)))
-                .rule("covers + layers ≤ thickness")
-                .remedy("correct covers, sizes or thickness"),
+            Fault::new(
+                "depth",
+                section.span_of("thickness"),
+                format!("covers and four layers need {} mm, the slab is {} mm", mm(stack), mm(slab.thickness.value)),
+            )
+            .rule("covers + layers ≤ thickness")
+            .remedy("correct covers, sizes or thickness"),
         );
     }
     let (side, width) = (slab.cover.side.value, slab.width.value);
@@ -303,7 +310,11 @@ fn fits(section: &Section, slab: &Slab, supports: &[Section], spans: &[Section])
         }
         let finest = span.bottom.value.spacing.min(slab.supports[i].top.as_ref().map_or(1000.0, |t| t.value.spacing));
         if (width - 2.0 * side) / finest > MOST_ACROSS as f64 {
-            section.fault(Fault::new("too-many", section.span_of("width"), "too many bars across the width").rule(format!("at most {MOST_ACROSS} bars of a kind across a slab")).remedy("split the slab"));
+            section.fault(
+                Fault::new("too-many", section.span_of("width"), "too many bars across the width")
+                    .rule(format!("at most {MOST_ACROSS} bars of a kind across a slab"))
+                    .remedy("split the slab"),
+            );
         }
     }
     for i in [0, slab.supports.len() - 1] {

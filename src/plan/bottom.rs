@@ -27,7 +27,7 @@ fn span_lines(work: &Work, k: usize) -> Vec<f64> {
     let slab = work.slab;
     let bars = &slab.spans[k].bottom.value;
     let base = lines::across(slab.width.value, work.side(), bars.size, bars.spacing);
-    if k % 2 == 0 {
+    if k.is_multiple_of(2) {
         return base;
     }
     let neighbours = [k.checked_sub(1), Some(k + 1)];
@@ -55,8 +55,8 @@ pub(super) fn plan(work: &mut Work, ends: &Ends) {
     }
     let half_laps: Vec<f64> = (1..count).map(|j| half_lap(work, j, &sets)).collect();
     let mut right_ends: Option<f64> = None;
-    for k in 0..count {
-        right_ends = place(work, k, &sets[k], ends, &half_laps, right_ends);
+    for (k, set) in sets.iter().enumerate() {
+        right_ends = place(work, k, set, ends, &half_laps, right_ends);
     }
 }
 
@@ -114,7 +114,14 @@ fn stop(work: &mut Work, k: usize, left: bool) -> f64 {
     steps.push(
         Step::new(
             format!("stop no further than {} leff from the support line", crate::base::num(share, 3)),
-            format!("{} × {} = {}; the line is {} from grid {}", crate::base::num(share, 3), mm(span.effective), mm(share * span.effective), mm((line - grid).abs()), work.slab.supports[support].grid),
+            format!(
+                "{} × {} = {}; the line is {} from grid {}",
+                crate::base::num(share, 3),
+                mm(span.effective),
+                mm(share * span.effective),
+                mm((line - grid).abs()),
+                work.slab.supports[support].grid
+            ),
             format!("{} mm from the grid", mm(exact)),
         )
         .cited(rule("D11"))
@@ -140,7 +147,11 @@ fn half_lap(work: &mut Work, j: usize, sets: &[SpanSet]) -> f64 {
     let (left, right) = (&sets[j - 1], &sets[j]);
     let small = left.bars.size.min(right.bars.size);
     let on = |set: &SpanSet, right_end: bool| -> Vec<f64> {
-        pattern::parts(set.turn, &set.lines, set.phase[0]).into_iter().filter(|p| if right_end { p.right_on } else { p.left_on }).flat_map(|p| p.lines).collect()
+        pattern::parts(set.turn, &set.lines, set.phase[0])
+            .into_iter()
+            .filter(|p| if right_end { p.right_on } else { p.left_on })
+            .flat_map(|p| p.lines)
+            .collect()
     };
     let (a, b) = (on(left, true), on(right, false));
     let apart = lines::worst_gap(&a, f64::from(left.bars.size), &b, f64::from(right.bars.size));

@@ -29,7 +29,12 @@ fn bottom(work: &mut Work) {
             let grid = work.slab.supports[k + 1].grid.clone();
             work.reason(
                 &format!("support:{grid}/B2"),
-                format!("the support is {} mm wide, over {} = {} mm: B2 goes on over it", mm(to - from), spacing::most_text(spacing::Zone::Distribution), mm(most)),
+                format!(
+                    "the support is {} mm wide, over {} = {} mm: B2 goes on over it",
+                    mm(to - from),
+                    spacing::most_text(spacing::Zone::Distribution),
+                    mm(most)
+                ),
                 rule("D19"),
             );
             let lines = lines::centred(from, to, bars.value.spacing);
@@ -67,8 +72,13 @@ fn top(work: &mut Work) {
         })
         .sorted_by(|a, b| a.1.total_cmp(&b.1))
         .collect();
-    let held: Vec<(f64, f64)> =
-        work.plan.runs.iter().filter(|r| r.role == Role::Edge && r.along == Along::Y && r.z > work.h() / 2.0).flat_map(|r| r.lines.iter().map(|x| (*x, r.size())).collect::<Vec<_>>()).collect();
+    let held: Vec<(f64, f64)> = work
+        .plan
+        .runs
+        .iter()
+        .filter(|r| r.role == Role::Edge && r.along == Along::Y && r.z > work.h() / 2.0)
+        .flat_map(|r| r.lines.iter().map(|x| (*x, r.size())).collect::<Vec<_>>())
+        .collect();
     let gap = spacing::least_gap(bars.value.size, work.basis.aggregate.value);
     for (zone, low, high) in zones {
         let mut lines = lines::fill(low + INSIDE, high - INSIDE, bars.value.spacing);
@@ -86,12 +96,8 @@ fn top(work: &mut Work) {
         let zone = zone.split_once('/').map_or(String::new(), |(_, rest)| rest.replace("/T1", "/T2"));
         let steps = vec![
             Step::new("bars of the design", "", bars.value.text(&work.basis.bar_letter)).at(&bars.at),
-            Step::new(
-                "number over the top bars",
-                format!("ceil(({} - 2 × 50)/{}) + 1", mm(high - low), mm(bars.value.spacing)),
-                n.to_string(),
-            )
-            .cited(rule("D19")),
+            Step::new("number over the top bars", format!("ceil(({} - 2 × 50)/{}) + 1", mm(high - low), mm(bars.value.spacing)), n.to_string())
+                .cited(rule("D19")),
         ];
         work.explain(&format!("{zone}/count"), steps);
         push(work, Layer::T2, &bars.value, &lines, &zone);

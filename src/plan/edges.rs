@@ -12,11 +12,11 @@ use itertools::Itertools;
 const NAMES: [&str; 2] = ["near", "far"];
 
 pub(super) fn plan(work: &mut Work) {
-    for side in 0..2 {
+    for (side, name) in NAMES.iter().enumerate() {
         match work.slab.edges[side] {
             Edge::Free => free(work, side),
             Edge::Wall | Edge::Beam => held(work, side),
-            Edge::Joint => work.reason(&format!("edge:{}", NAMES[side]), "a joint: no edge bars; continuity is the engineer's", rule("D9")),
+            Edge::Joint => work.reason(&format!("edge:{name}"), "a joint: no edge bars; continuity is the engineer's", rule("D9")),
         }
         hold(work, side);
     }
@@ -62,7 +62,8 @@ fn free(work: &mut Work, side: usize) {
     let leg = up(2.0 * work.h(), 5.0);
     let steps = vec![
         Step::new("legs at least 2h", format!("2 × {}", mm(work.h())), format!("{} mm", mm(leg))).cited(rule("D9")).at(&work.slab.thickness.at),
-        Step::new("beside every B2 bar, and at its spacing where there is none", format!("{} mm", mm(called.spacing)), lines.len().to_string()).cited(rule("D9, D19")),
+        Step::new("beside every B2 bar, and at its spacing where there is none", format!("{} mm", mm(called.spacing)), lines.len().to_string())
+            .cited(rule("D9, D19")),
     ];
     work.explain(&format!("{address}/count"), steps);
     push(work, side, size, [leg, depth, leg], shape, &lines, called.spacing, Role::Edge, &address);
@@ -133,15 +134,23 @@ fn held(work: &mut Work, side: usize) {
             .collect();
         let zone = format!("{address}/span:{}", k + 1);
         let steps = vec![
-            Step::new("area across the edge", format!("max({} × {}, As,min)", crate::base::num(sheet.share, 2), mm(area)), format!("{} mm²/m", mm(needed))).cited(rule("D8, D9")),
+            Step::new("area across the edge", format!("max({} × {}, As,min)", crate::base::num(sheet.share, 2), mm(area)), format!("{} mm²/m", mm(needed)))
+                .cited(rule("D8, D9")),
             Step::new("lightest bars from size 10 up", format!("at most {} mm apart", mm(most)), bars.text(&work.basis.bar_letter)).cited(rule("D10a")),
             Step::new(
                 "reach from the edge's face",
-                format!("{} leff = {} × {}, and {} on the edge less the cover", crate::base::num(fraction, 3), crate::base::num(fraction, 3), mm(span.effective), mm(work.slab.edge_width[side])),
+                format!(
+                    "{} leff = {} × {}, and {} on the edge less the cover",
+                    crate::base::num(fraction, 3),
+                    crate::base::num(fraction, 3),
+                    mm(span.effective),
+                    mm(work.slab.edge_width[side])
+                ),
                 format!("{} mm", mm(reach)),
             )
             .cited(rule("D9")),
-            Step::new("number", if serves { "outside the T1 zones, where T2 gives the area" } else { "face to face" }, lines.len().to_string()).cited(rule("D9, D19")),
+            Step::new("number", if serves { "outside the T1 zones, where T2 gives the area" } else { "face to face" }, lines.len().to_string())
+                .cited(rule("D9, D19")),
         ];
         work.explain(&format!("{zone}/count"), steps);
         push(work, side, bars.size, [reach, depth, back], shape, &lines, bars.spacing, Role::Edge, &zone);

@@ -121,9 +121,7 @@ pub(super) fn top_need(work: &Work, support: usize, size: u32) -> (f64, Vec<Step
     let value = (sheet.share * area).max(if sheet.least_area { least.value } else { 0.0 }).max(own);
     let mut steps = vec![step];
     steps.extend(least.steps);
-    steps.push(
-        Step::new("area at the end", format!("max({} × {}, As,min)", num(sheet.share, 2), mm(area)), format!("{} mm²/m", mm(value))).cited(rule("D8")),
-    );
+    steps.push(Step::new("area at the end", format!("max({} × {}, As,min)", num(sheet.share, 2), mm(area)), format!("{} mm²/m", mm(value))).cited(rule("D8")));
     (value, steps)
 }
 
@@ -245,10 +243,9 @@ fn decide_bottom(work: &mut Work, side: usize, support: usize, k: usize, on: &Ba
         0.0
     };
     let shear = match (&slab.supports[support].shear, &slab.spans[k].shear) {
-        (Some(v), _) | (None, Some(v)) => crate::trace::Worked {
-            value: v.value,
-            steps: vec![Step::new("end shear VEd", "as given", format!("{} kN/m", num(v.value, 2))).at(&v.at)],
-        },
+        (Some(v), _) | (None, Some(v)) => {
+            crate::trace::Worked { value: v.value, steps: vec![Step::new("end shear VEd", "as given", format!("{} kN/m", num(v.value, 2))).at(&v.at)] }
+        }
         _ => areas::end_shear(slab.permanent.value, slab.variable.value, work.stations.spans[k].effective),
     };
     let tie = areas::end_tie_force(shear.value);
@@ -270,9 +267,13 @@ fn decide_bottom(work: &mut Work, side: usize, support: usize, k: usize, on: &Ba
     let needed = straight.value;
     steps.extend(straight.steps);
     steps.push(
-        Step::new("straight past the face", format!("bearing {} - side cover {} - {}", mm(seat.value), mm(work.side()), mm(start)), format!("{} of {} mm needed", mm(available), mm(needed)))
-            .cited(rule("D7"))
-            .at(&seat.at),
+        Step::new(
+            "straight past the face",
+            format!("bearing {} - side cover {} - {}", mm(seat.value), mm(work.side()), mm(start)),
+            format!("{} of {} mm needed", mm(available), mm(needed)),
+        )
+        .cited(rule("D7"))
+        .at(&seat.at),
     );
     if available + crate::base::TOUCH >= needed {
         return (BottomEnd::Straight, start, steps);
@@ -298,7 +299,11 @@ fn decide_bottom(work: &mut Work, side: usize, support: usize, k: usize, on: &Ba
     }
     let closes = std::iter::once(on.size).chain(choose::smaller(on.size)).any(|size| closing(work, size).is_some());
     if closes {
-        work.reason(&format!("support:{grid}/B1"), format!("{short}, a leg up of {} does not fit in {}: lapped by closing bars", mm(leg), mm(room)), rule("D7"));
+        work.reason(
+            &format!("support:{grid}/B1"),
+            format!("{short}, a leg up of {} does not fit in {}: lapped by closing bars", mm(leg), mm(room)),
+            rule("D7"),
+        );
         return (BottomEnd::Closed, start, steps);
     }
     work.reason(&format!("support:{grid}/B1"), format!("{short} and no bend fits the depth: left straight"), rule("D7"));
@@ -336,7 +341,11 @@ fn decide_top(work: &mut Work, support: usize, bars: &mut Bars, bottom_needs_clo
             if size != bars.size {
                 let other = choose::equal_area(bars, size);
                 let letter = work.basis.bar_letter.clone();
-                work.reason(&address, format!("{} does not bend into {} mm: {} instead, of equal area", bars.text(&letter), mm(room), other.text(&letter)), rule("D7, D20"));
+                work.reason(
+                    &address,
+                    format!("{} does not bend into {} mm: {} instead, of equal area", bars.text(&letter), mm(room), other.text(&letter)),
+                    rule("D7, D20"),
+                );
                 *bars = other;
             }
             return TopEnd::Closed { shape, depth };

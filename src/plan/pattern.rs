@@ -33,14 +33,10 @@ pub fn parts(turn: Turn, lines: &[f64], phase: usize) -> Vec<Part> {
     let part = |left_on, right_on, lines, every, turn| Part { left_on, right_on, lines, every, turn };
     let parts = match turn {
         Turn::Full => vec![part(true, true, lines.to_vec(), 1.0, "")],
-        Turn::Alternate => vec![
-            part(true, true, pick(&|i| i % 2 == 0 || i == last), 2.0, "alt"),
-            part(false, false, pick(&|i| i % 2 == 1 && i != last), 2.0, "alt"),
-        ],
-        Turn::Reversed => vec![
-            part(true, false, pick(&|i| i % 2 == phase), 2.0, "alt rev"),
-            part(false, true, pick(&|i| i % 2 != phase), 2.0, "alt rev"),
-        ],
+        Turn::Alternate => {
+            vec![part(true, true, pick(&|i| i % 2 == 0 || i == last), 2.0, "alt"), part(false, false, pick(&|i| i % 2 == 1 && i != last), 2.0, "alt")]
+        }
+        Turn::Reversed => vec![part(true, false, pick(&|i| i % 2 == phase), 2.0, "alt rev"), part(false, true, pick(&|i| i % 2 != phase), 2.0, "alt rev")],
     };
     parts.into_iter().filter(|p| !p.lines.is_empty()).collect()
 }
@@ -65,12 +61,7 @@ pub(super) fn all_run_on(work: &Work, bars: &Bars, depth: f64) -> Option<String>
 
 /// The forms of a reversed pair that is one mark: where both come out equal, or the shorter may grow by up to 75 mm (D14).
 /// `one` and `other` give the forms for an extra length at the stopping end.
-pub(super) fn one_mark(
-    size: u32,
-    deduction: &Deduction,
-    one: &dyn Fn(f64) -> [Form; 2],
-    other: &dyn Fn(f64) -> [Form; 2],
-) -> Option<[[Form; 2]; 2]> {
+pub(super) fn one_mark(size: u32, deduction: &Deduction, one: &dyn Fn(f64) -> [Form; 2], other: &dyn Fn(f64) -> [Form; 2]) -> Option<[[Form; 2]; 2]> {
     const MOST_GROWTH: f64 = 75.0;
     let made = |forms: [Form; 2]| between(size, forms[0], forms[1], deduction);
     let same = |a: &[Form; 2], b: &[Form; 2]| {

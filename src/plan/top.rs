@@ -54,8 +54,18 @@ fn reaches(work: &mut Work, j: usize, left: bool, bars: &Bars) -> [f64; 2] {
         let exact = (from + sheet.end_top.reach * leff).max(face_from_grid + sheet.end_top.least_face_sizes * size);
         steps.push(
             Step::new(
-                format!("reach at an end: {} leff from the {}", crate::base::num(sheet.end_top.reach, 3), if sheet.end_top.from == From::Face { "face" } else { "support line" }),
-                format!("{} + {} × {}, at least {} sizes from the face", mm(from), crate::base::num(sheet.end_top.reach, 3), mm(leff), mm(sheet.end_top.least_face_sizes)),
+                format!(
+                    "reach at an end: {} leff from the {}",
+                    crate::base::num(sheet.end_top.reach, 3),
+                    if sheet.end_top.from == From::Face { "face" } else { "support line" }
+                ),
+                format!(
+                    "{} + {} × {}, at least {} sizes from the face",
+                    mm(from),
+                    crate::base::num(sheet.end_top.reach, 3),
+                    mm(leff),
+                    mm(sheet.end_top.least_face_sizes)
+                ),
                 format!("{} mm from the grid", mm(exact)),
             )
             .cited(rule("D8, D11")),
@@ -64,13 +74,23 @@ fn reaches(work: &mut Work, j: usize, left: bool, bars: &Bars) -> [f64; 2] {
     } else {
         let near = (line_from_grid + sheet.top.near * leff).max(face_from_grid + sheet.top.near_face_sizes * size);
         let far = (line_from_grid + sheet.top.far * leff).max(near);
-        steps.push(
-            Step::new("the greater of the two adjacent effective spans", "", format!("{} mm", mm(leff))).cited(rule("D3")),
-        );
+        steps.push(Step::new("the greater of the two adjacent effective spans", "", format!("{} mm", mm(leff))).cited(rule("D3")));
         steps.push(
             Step::new(
-                format!("near reach: the further of {} leff from the line and {} sizes from the face", crate::base::num(sheet.top.near, 3), mm(sheet.top.near_face_sizes)),
-                format!("max({} + {} × {}, {} + {} × {})", mm(line_from_grid), crate::base::num(sheet.top.near, 3), mm(leff), mm(face_from_grid), mm(sheet.top.near_face_sizes), bars.size),
+                format!(
+                    "near reach: the further of {} leff from the line and {} sizes from the face",
+                    crate::base::num(sheet.top.near, 3),
+                    mm(sheet.top.near_face_sizes)
+                ),
+                format!(
+                    "max({} + {} × {}, {} + {} × {})",
+                    mm(line_from_grid),
+                    crate::base::num(sheet.top.near, 3),
+                    mm(leff),
+                    mm(face_from_grid),
+                    mm(sheet.top.near_face_sizes),
+                    bars.size
+                ),
                 format!("{} mm from the grid", mm(near)),
             )
             .cited(rule("D11")),

@@ -47,7 +47,11 @@ pub fn explain(model: &BarModel, source: &str, address: &str) -> Result<Vec<Answ
         }
     }
     if wanted.is_empty() {
-        let near: Vec<String> = nearest(address, known()).map(str::to_string).into_iter().chain(known().filter(|a| a.contains(last_part(address))).take(5).map(str::to_string)).collect();
+        let near: Vec<String> = nearest(address, known())
+            .map(str::to_string)
+            .into_iter()
+            .chain(known().filter(|a| a.contains(last_part(address))).take(5).map(str::to_string))
+            .collect();
         return Err(if near.is_empty() { known().take(8).map(str::to_string).collect() } else { near });
     }
     let mut seen = std::collections::BTreeSet::new();

@@ -72,13 +72,13 @@ fn slab_head(slab: &SlabModel) -> Vec<(&'static str, Value)> {
 
 fn supports(slab: &SlabModel) -> Vec<Value> {
     let stations = slab.stations.supports.iter().zip(&slab.grids);
-    stations.map(|(s, grid)| json!({ "grid": grid, "left_face_mm": number(s.left_face), "centre_mm": number(s.centre), "right_face_mm": number(s.right_face) })).collect()
+    stations
+        .map(|(s, grid)| json!({ "grid": grid, "left_face_mm": number(s.left_face), "centre_mm": number(s.centre), "right_face_mm": number(s.right_face) }))
+        .collect()
 }
 
 fn spans(slab: &SlabModel) -> Vec<Value> {
-    let span = |s: &crate::plan::stations::SpanAt| {
-        json!({ "clear_mm": number(s.clear), "effective_mm": number(s.effective), "left_line_mm": number(s.left_line), "right_line_mm": number(s.right_line) })
-    };
+    let span = |s: &crate::plan::stations::SpanAt| json!({ "clear_mm": number(s.clear), "effective_mm": number(s.effective), "left_line_mm": number(s.left_line), "right_line_mm": number(s.right_line) });
     slab.stations.spans.iter().map(span).collect()
 }
 

@@ -77,27 +77,31 @@ pub fn concrete(slab: &SlabModel) -> (f64, f64) {
 /// The summary for the terminal: by size, by layer, by slab with rates, classes, over-length and laps.
 pub fn summary(model: &BarModel) -> Table {
     let mut table = Table::new(&["steel", "", ">bars", ">length m", ">mass kg", ">laps kg", ">kg/m²", ">kg/m³"]);
-    let mut row = |group: &str, name: String, sum: &Sum, rates: Option<(f64, f64)>| {
-        let rate = |of: f64| if of > 0.0 { num(sum.kg / of, 1) } else { String::new() };
-        let (area, volume) = rates.map_or((String::new(), String::new()), |(a, v)| (rate(a), rate(v)));
-        table.row([group.to_string(), name, sum.bars.to_string(), num(sum.length_m, 1), num(sum.kg, 1), num(sum.laps_kg, 1), area, volume]);
-    };
-    let groups = |group: &'static str, sums: BTreeMap<String, Sum>, row: &mut dyn FnMut(&str, String, &Sum, Option<(f64, f64)>)| {
+    let groups = [
+        ("size", sums(model, |_, b| Some(format!("{}{:02}", b.letter, b.size)))),
+        ("layer", sums(model, |_, b| Some(b.layer.name().to_string()))),
+        ("class", sums(model, |_, b| Some(class(b).to_string()))),
+        ("over 12 m", sums(model, |_, b| (b.length > OVER_LENGTH).then(|| b.type_size()))),
+    ];
+    for (group, sums) in groups {
         for (name, sum) in sums {
-            row(group, name, &sum, None);
+            table.row(summary_row(group, name, &sum, None));
         }
-    };
-    groups("size", sums(model, |_, b| Some(format!("{}{:02}", b.letter, b.size))), &mut row);
-    groups("layer", sums(model, |_, b| Some(b.layer.name().to_string())), &mut row);
-    groups("class", sums(model, |_, b| Some(class(b).to_string())), &mut row);
-    groups("over 12 m", sums(model, |_, b| (b.length > OVER_LENGTH).then(|| b.type_size())), &mut row);
+    }
     for slab in &model.slabs {
         let own = sums(model, |s, _| (s.mark == slab.mark).then_some(())).remove(&()).unwrap_or_default();
-        row("slab", format!("{} × {}", slab.mark, slab.members), &own, Some(concrete(slab)));
+        table.row(summary_row("slab", format!("{} × {}", slab.mark, slab.members), &own, Some(concrete(slab))));
     }
     let all = model.slabs.iter().map(concrete).fold((0.0, 0.0), |a, b| (a.0 + b.0, a.1 + b.1));
-    row("total", String::new(), &total(model), Some(all));
+    table.row(summary_row("total", String::new(), &total(model), Some(all)));
     table
+}
+
+/// A row of the summary; `concrete` is plan area and volume, m² and m³, for the rates.
+fn summary_row(group: &str, name: String, sum: &Sum, concrete: Option<(f64, f64)>) -> [String; 8] {
+    let rate = |of: f64| if of > 0.0 { num(sum.kg / of, 1) } else { String::new() };
+    let (area, volume) = concrete.map_or((String::new(), String::new()), |(a, v)| (rate(a), rate(v)));
+    [group.to_string(), name, sum.bars.to_string(), num(sum.length_m, 1), num(sum.kg, 1), num(sum.laps_kg, 1), area, volume]
 }
 
 /// Layers in laying order that a slab has.

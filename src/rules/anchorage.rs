@@ -130,7 +130,13 @@ pub fn anchorage(bar: &Bar) -> Worked {
     steps.push(
         Step::new(
             "anchorage length lbd",
-            format!("α1 α2 lb,rqd = {} × {} × {}, not under lb,min = max(0.3 lb,rqd, 10φ, 100) = {}", num(alpha1, 2), num(alpha2, 3), num(basic.value, 1), num(least, 1)),
+            format!(
+                "α1 α2 lb,rqd = {} × {} × {}, not under lb,min = max(0.3 lb,rqd, 10φ, 100) = {}",
+                num(alpha1, 2),
+                num(alpha2, 3),
+                num(basic.value, 1),
+                num(least, 1)
+            ),
             format!("{} mm", num(value, 1)),
         )
         .cited(ec2("8.4.4(1)")),

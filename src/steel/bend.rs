@@ -131,13 +131,8 @@ impl Bent {
 
     /// The steps of the cut length.
     pub fn length_steps(&self) -> Vec<Step> {
-        let numbers: Vec<String> = self
-            .shape
-            .length
-            .iter()
-            .filter(|(name, _)| name.as_str() != "one")
-            .map(|(name, _)| format!("{name} = {}", num(self.quantity(name), 1)))
-            .collect();
+        let numbers: Vec<String> =
+            self.shape.length.iter().filter(|(name, _)| name.as_str() != "one").map(|(name, _)| format!("{name} = {}", num(self.quantity(name), 1))).collect();
         let table3 = || cite("BS8666", "Table 3");
         let unrounded = self.formula_length();
         vec![

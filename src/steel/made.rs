@@ -102,12 +102,7 @@ pub fn straight(size: u32, from: End, to: End, deduction: &Deduction) -> Made {
                 (x, _) => (x.at(), "at the right end"),
             };
             steps.push(
-                Step::new(
-                    "up to a multiple of 25",
-                    format!("{}, surplus {} {side}", mm(room), mm(surplus)),
-                    format!("{} mm", mm(length)),
-                )
-                .cited(rule("D16")),
+                Step::new("up to a multiple of 25", format!("{}, surplus {} {side}", mm(room), mm(surplus)), format!("{} mm", mm(length))).cited(rule("D16")),
             );
             (length, start)
         }
@@ -186,9 +181,19 @@ pub fn u_bar(shape: &'static str, size: u32, face: f64, side: Side, legs: [f64; 
 pub enum Form {
     Straight(End),
     /// A 90° bend at the cover line `face`, its leg going up (+1) or down (-1).
-    Turned { face: f64, leg: f64, turn: f64 },
+    Turned {
+        face: f64,
+        leg: f64,
+        turn: f64,
+    },
     /// Closes the face: upright of `depth` overall, and a leg back of `back` mm.
-    Closed { face: f64, shape: &'static str, depth: f64, back: f64, turn: f64 },
+    Closed {
+        face: f64,
+        shape: &'static str,
+        depth: f64,
+        back: f64,
+        turn: f64,
+    },
 }
 
 impl Form {
@@ -231,6 +236,8 @@ fn both_turned(size: u32, low: f64, high: f64, left: Form, right: Form) -> Made 
     };
     let ((a, turn), (c, _)) = (upright(left), upright(right));
     let axis = vec![(low + d / 2.0, turn * (a - d / 2.0)), (low + d / 2.0, 0.0), (high - d / 2.0, 0.0), (high - d / 2.0, turn * (c - d / 2.0))];
-    let why = vec![Step::new("between two faces, less the deduction", "down to a multiple of 5".to_string(), format!("{} mm", mm(high - low))).cited(rule("D16, D17"))];
+    let why = vec![
+        Step::new("between two faces, less the deduction", "down to a multiple of 5".to_string(), format!("{} mm", mm(high - low))).cited(rule("D16, D17")),
+    ];
     Made::bent("21", size, &[('A', a), ('B', high - low), ('C', c)], axis).explained('B', why)
 }

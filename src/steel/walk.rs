@@ -71,10 +71,7 @@ fn bend(bent: &Bent, turn: &Walk) -> Result<Bend, BendError> {
             let value = |name: &str| name.chars().next().and_then(|l| bent.dims.get(&l)).copied().unwrap_or(0.0);
             let (rise, along) = (value(&turn_by.rise) - turn_by.thick * d, value(&turn_by.along));
             if rise < 0.0 || rise >= along {
-                return Err(BendError::Impossible(format!(
-                    "the offset {} has to be less than {} along the slope",
-                    turn_by.rise, turn_by.along
-                )));
+                return Err(BendError::Impossible(format!("the offset {} has to be less than {} along the slope", turn_by.rise, turn_by.along)));
             }
             let angle = (rise / along).asin();
             let line = match apex {

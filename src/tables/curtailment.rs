@@ -2,8 +2,7 @@
 
 use serde::Deserialize;
 
-pub const EMBEDDED: [&str; 2] =
-    [include_str!("../../templates/curtailment/one-way-50.toml"), include_str!("../../templates/curtailment/bs8110-3-25.toml")];
+pub const EMBEDDED: [&str; 2] = [include_str!("../../templates/curtailment/one-way-50.toml"), include_str!("../../templates/curtailment/bs8110-3-25.toml")];
 
 #[derive(Clone, Debug, Deserialize)]
 #[serde(deny_unknown_fields)]

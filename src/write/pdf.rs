@@ -5,8 +5,8 @@ use crate::tables::font::{CAPITAL, face};
 use crate::write::svg::dashes;
 use lopdf::{Dictionary, Object, StringFormat};
 use printpdf::{
-    Color, FontId, Greyscale, LayerInternalId, Line, LineCapStyle, LineDashPattern, LinePoint, Mm, Op, PaintMode, ParsedFont, PdfDocument, PdfFont, PdfFontHandle, PdfPage,
-    PdfSaveOptions, Point, Polygon, PolygonRing, Pt, TextItem, TextMatrix, WindingOrder,
+    Color, FontId, Greyscale, LayerInternalId, Line, LineCapStyle, LineDashPattern, LinePoint, Mm, Op, PaintMode, ParsedFont, PdfDocument, PdfFont,
+    PdfFontHandle, PdfPage, PdfSaveOptions, Point, Polygon, PolygonRing, Pt, TextItem, TextMatrix, WindingOrder,
 };
 
 const POINTS_PER_MM: f64 = 72.0 / 25.4;
@@ -70,7 +70,11 @@ fn repair(file: &mut lopdf::Document, date: (u16, u8, u8)) -> Result<(), String>
 /// Sixteen bytes from the contents of every stream: the same for the same drawing.
 fn identifier(file: &lopdf::Document) -> Vec<u8> {
     let fnv = |seed: u64| {
-        file.objects.values().filter_map(|o| o.as_stream().ok()).flat_map(|s| &s.content).fold(seed, |hash, byte| (hash ^ u64::from(*byte)).wrapping_mul(0x0100_0000_01b3))
+        file.objects
+            .values()
+            .filter_map(|o| o.as_stream().ok())
+            .flat_map(|s| &s.content)
+            .fold(seed, |hash, byte| (hash ^ u64::from(*byte)).wrapping_mul(0x0100_0000_01b3))
     };
     [fnv(0xcbf2_9ce4_8422_2325), fnv(0x9e37_79b9_7f4a_7c15)].iter().flat_map(|h| h.to_be_bytes()).collect()
 }
@@ -179,7 +183,9 @@ fn circle(centre: [f64; 2], r: f64, ink: &Ink) -> Vec<LinePoint> {
     const K: f64 = 0.552_284_75;
     let at = |x: f64, y: f64, bezier: bool| LinePoint { p: point([centre[0] + x * r, centre[1] + y * r], ink), bezier };
     let mut points = vec![at(1.0, 0.0, false)];
-    for (a, b, to) in [((1.0, K), (K, 1.0), (0.0, 1.0)), ((-K, 1.0), (-1.0, K), (-1.0, 0.0)), ((-1.0, -K), (-K, -1.0), (0.0, -1.0)), ((K, -1.0), (1.0, -K), (1.0, 0.0))] {
+    for (a, b, to) in
+        [((1.0, K), (K, 1.0), (0.0, 1.0)), ((-K, 1.0), (-1.0, K), (-1.0, 0.0)), ((-1.0, -K), (-K, -1.0), (0.0, -1.0)), ((K, -1.0), (1.0, -K), (1.0, 0.0))]
+    {
         points.extend([at(a.0, a.1, true), at(b.0, b.1, true), at(to.0, to.1, false)]);
     }
     points
