@@ -1,7 +1,9 @@
 //! Every test of the program, in one binary.
 
-#![allow(clippy::unwrap_used, clippy::expect_used, clippy::panic)]
+#![allow(clippy::unwrap_used, clippy::expect_used, clippy::panic, clippy::print_stderr)]
 
 mod faults;
 mod outside;
 mod random_jobs;
+mod samples;
+mod tables_cited;
