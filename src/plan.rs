@@ -3,17 +3,19 @@
 
 pub mod bottom;
 pub mod choose;
+pub mod closing;
 pub mod corners;
 pub mod cut;
 pub mod distribution;
 pub mod edges;
 pub mod ends;
+pub mod fitting;
 pub mod lines;
 pub mod pattern;
 pub mod stations;
 pub mod top;
 
-use crate::job::{Basis, Job, Slab};
+use crate::job::{Bars, Basis, Job, Slab};
 use crate::steel::made::Made;
 use crate::trace::{Cite, Ledger, Step};
 use stations::Stations;
@@ -117,6 +119,14 @@ pub struct Plan {
     pub laps: Vec<(u32, f64)>,
 }
 
+/// Top bars over one support, or over several that run through as one set.
+#[derive(Clone, Debug)]
+pub(crate) struct TopSet {
+    pub first: usize,
+    pub last: usize,
+    pub bars: Bars,
+}
+
 /// What the planners share while one slab is planned.
 pub(crate) struct Work<'a> {
     pub basis: &'a Basis,
@@ -167,6 +177,16 @@ impl Work<'_> {
 
     pub fn fyd(&self) -> f64 {
         crate::rules::anchorage::fyd(self.fyk())
+    }
+
+    /// Effective depth of B1, mm.
+    pub fn bottom_depth(&self, size: u32) -> f64 {
+        self.h() - self.slab.cover.bottom.value - f64::from(size) / 2.0
+    }
+
+    /// Effective depth of T1, mm.
+    pub fn top_depth(&self, size: u32) -> f64 {
+        self.h() - self.slab.cover.top.value - f64::from(size) / 2.0
     }
 
     /// Depth between the covers, less the deduction for bent bars, down to 5 mm: the greatest upright of a bent bar.
@@ -221,10 +241,10 @@ fn plan_slab(basis: &Basis, slab: &Slab) -> Plan {
     let tops = top::decide(&mut work);
     let mut ends = ends::decide(&mut work, &tops);
     bottom::plan(&mut work, &ends);
-    ends::lap(&mut work, &mut ends);
+    closing::lap(&mut work, &mut ends);
     top::plan(&mut work, tops, &ends);
-    ends::close(&mut work, &ends);
-    ends::hold(&mut work, &ends);
+    closing::close(&mut work, &ends);
+    closing::hold(&mut work, &ends);
     distribution::plan(&mut work);
     edges::plan(&mut work);
     corners::plan(&mut work);

@@ -6,4 +6,5 @@ mod faults;
 mod outside;
 mod random_jobs;
 mod samples;
+mod sheets;
 mod tables_cited;

@@ -285,7 +285,7 @@ fn point_at(paper: &mut Paper, v: &View, cut: &Cut, mut points: Vec<(String, [f6
 /// The thickness at the broken or far side of a close-up.
 fn thickness(paper: &mut Paper, v: &View, cut: &Cut) {
     let ends_high = cut.high < cut.concrete_extent().1 - 0.5;
-    let x = if ends_high { cut.x(cut.high) + 4.0 } else { cut.x(cut.low) - 4.0 };
+    let x = if ends_high { cut.x(cut.high) + 7.0 } else { cut.x(cut.low) - 5.0 };
     let from = if ends_high { cut.x(cut.high) + 1.5 } else { cut.x(cut.low) - 1.5 };
     super::plan_view::upright_dimension(paper, v, x, cut.y(cut.slab.thickness.value), cut.y(0.0), from, &mm(cut.slab.thickness.value));
 }
@@ -311,8 +311,8 @@ pub fn name_layers(paper: &mut Paper, v: &View, cut: &Cut) {
         let x1 = cut.x(cut.high);
         let sign = if level >= 0.0 { "+" } else { "" };
         let text = format!("{sign}{:.3}", level / 1000.0);
-        paper.text(&lettering, Spot { at: [x1 + 5.0, cut.corner[1] - 1.0], anchor: Anchor::Start, upward: false }, &text);
-        paper.scene.line(Layer::Dimension, &[[x1 + 1.0, cut.corner[1]], [x1 + 16.0, cut.corner[1]]], Pen::solid(v.pens.thin));
+        paper.text(&lettering, Spot { at: [x1 + 8.0, cut.corner[1] - 1.0], anchor: Anchor::Start, upward: false }, &text);
+        paper.scene.line(Layer::Dimension, &[[x1 + 1.0, cut.corner[1]], [x1 + 20.0, cut.corner[1]]], Pen::solid(v.pens.thin));
     }
     let text = num(cut.slab.thickness.value, 0);
     super::plan_view::upright_dimension(paper, v, cut.x(cut.high) + 5.0, cut.y(cut.slab.thickness.value), cut.y(0.0), cut.x(cut.high) + 1.0, &text);

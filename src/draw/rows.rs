@@ -9,7 +9,7 @@ use crate::plan::{Layer as BarLayer, Role};
 use crate::scene::{Anchor, Layer, Pen, Weight};
 
 /// Paper height of one row, mm.
-pub const ROW: f64 = 10.5;
+pub const ROW: f64 = 13.0;
 /// Paper between two bars of one row, for their texts, mm.
 const APART: f64 = 16.0;
 
@@ -137,7 +137,7 @@ fn ends(paper: &mut Paper, v: &View, model: &SlabModel, occurrence: &Occurrence,
         }
         let nearest = model.stations.supports.iter().map(|s| s.centre).min_by(|a, b| (a - station).abs().total_cmp(&(b - station).abs()));
         let Some(grid) = nearest.filter(|g| (g - station).abs() > 0.5) else { continue };
-        level_dimension(paper, v, v.x(grid), v.x(station), y + 2.6, &mm((grid - station).abs()));
+        level_dimension(paper, v, v.x(grid), v.x(station), y + 5.2, &mm((grid - station).abs()));
     }
 }
 

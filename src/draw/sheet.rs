@@ -229,9 +229,10 @@ fn bands(paper: &mut Paper, view: &View, slab: &Slab, model: &SlabModel, fit: &F
     let x = view.x(view.low) - MARGIN + 4.0;
     let scale = fit.scale;
     let broken = if fit.gap.is_some() { ", broken across" } else { "" };
+    let name = if slab.members > 1 { format!("{} ({} alike)", slab.mark, slab.members) } else { slab.mark.clone() };
     let titles = [
-        (bands.bottom_plan, format!("Slab {}: BOTTOM  B1 and B2", slab.mark), format!("plan 1:{scale}{broken}")),
-        (bands.top_plan, format!("Slab {}: TOP  T1, T2, ends and edges", slab.mark), format!("plan 1:{scale}{broken}")),
+        (bands.bottom_plan, format!("Slab {name}: BOTTOM  B1 and B2"), format!("plan 1:{scale}{broken}")),
+        (bands.top_plan, format!("Slab {name}: TOP  T1, T2, ends and edges"), format!("plan 1:{scale}{broken}")),
         (bands.top_rows, "Top bars drawn out".to_string(), format!("stations 1:{scale}, uprights not to scale")),
         (bands.section, "Section along the span".to_string(), format!("stations 1:{scale}, levels 1:{levels}")),
         (bands.bottom_rows, "Bottom bars drawn out".to_string(), format!("stations 1:{scale}")),

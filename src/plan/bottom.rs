@@ -9,19 +9,6 @@ use crate::rules::anchorage::{self, Bar, Bond};
 use crate::steel::made::{End, Form, between};
 use crate::trace::{Step, ec2, rule};
 
-/// Effective depth of B1, mm.
-pub(super) fn depth(work: &Work, size: u32) -> f64 {
-    work.h() - work.slab.cover.bottom.value - f64::from(size) / 2.0
-}
-
-/// The bars of a span that run on, at the spacing at which they do so.
-pub(super) fn running_on(work: &Work, k: usize) -> Bars {
-    let bars = &work.slab.spans[k].bottom.value;
-    let share = work.basis.curtailment.value.bottom.on_share;
-    let all = share > 0.5 || pattern::all_run_on(work, bars, depth(work, bars.size)).is_some();
-    Bars { size: bars.size, spacing: if all { bars.spacing } else { 2.0 * bars.spacing } }
-}
-
 /// Lines of B1 in a span; those of every second span stand in contact beside the lines of the first (D18).
 fn span_lines(work: &Work, k: usize) -> Vec<f64> {
     let slab = work.slab;
@@ -65,7 +52,7 @@ fn decide(work: &mut Work, k: usize, ends: &Ends, before: Option<&SpanSet>) -> S
     let stop = [stop(work, k, true), stop(work, k, false)];
     let address = format!("span:{}/B1", k + 1);
     let share = work.basis.curtailment.value.bottom.on_share;
-    let mut full = pattern::all_run_on(work, &bars, depth(work, bars.size));
+    let mut full = pattern::all_run_on(work, &bars, work.bottom_depth(bars.size));
     if full.is_none() && share > 0.5 {
         full = Some(format!("the rule sheet runs on {} % of the bars, more than pairs can give", mm(share * 100.0)));
     }

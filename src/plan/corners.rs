@@ -1,6 +1,6 @@
 //! D10: corners of an end support and a held side edge. T1, T2 and edge bars already there count; only the shortfall is added.
 
-use super::{Along, Layer, Role, Run, Work, lines, top};
+use super::{Along, Layer, Role, Run, Work, lines};
 use crate::base::{area_per_metre, mm, up};
 use crate::rules::{areas, spacing};
 use crate::steel::made::{End, Form, between};
@@ -34,7 +34,7 @@ fn along_span(work: &mut Work, support: usize, side: usize) {
     let Some(end) = ends.next() else { return };
     let (size, step, level) = (end.made.size, end.spacing, end.z);
     let all: Vec<f64> = end.lines.iter().chain(ends.flat_map(|r| &r.lines)).copied().sorted_by(f64::total_cmp).collect();
-    let least = areas::least(work.fck(), work.fyk(), top::depth(work, size)).value;
+    let least = areas::least(work.fck(), work.fyk(), work.top_depth(size)).value;
     let area = area_per_metre(size, step);
     let most = spacing::most(spacing::Zone::Main, work.h());
     if area >= least && step <= most {

@@ -1,6 +1,7 @@
 //! D9: side edges. Free: U-bars across the edge beside every B2 bar. Held: top bars across it with a closing bend. Joint: none.
 
-use super::ends::{closing_in, in_corner, inner_radius};
+use super::closing::{in_corner, inner_radius};
+use super::fitting::closing_in;
 use super::{Along, Layer, Role, Run, Work, choose, cut, lines};
 use crate::base::{gaps, mm, up};
 use crate::job::{Bars, Edge};

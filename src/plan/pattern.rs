@@ -92,3 +92,11 @@ pub(super) fn choose(work: &mut Work, address: &str, full: Option<String>, rever
     work.reason(address, text, cite);
     turn
 }
+
+/// The bottom bars of a span that run on, at the spacing at which they do so.
+pub(super) fn running_on(work: &Work, k: usize) -> Bars {
+    let bars = &work.slab.spans[k].bottom.value;
+    let share = work.basis.curtailment.value.bottom.on_share;
+    let all = share > 0.5 || all_run_on(work, bars, work.bottom_depth(bars.size)).is_some();
+    Bars { size: bars.size, spacing: if all { bars.spacing } else { 2.0 * bars.spacing } }
+}

@@ -2,25 +2,12 @@
 
 use super::ends::Ends;
 use super::pattern::{self, Turn};
-use super::{Along, Layer, Role, Run, Work, cut, lines};
+use super::{Along, Layer, Role, Run, TopSet, Work, cut, lines};
 use crate::base::{mm, up};
 use crate::job::Bars;
 use crate::steel::made::{End, Form, between};
 use crate::tables::curtailment::From;
 use crate::trace::{Step, rule};
-
-/// Top bars over one support, or over several that run through as one set.
-#[derive(Clone, Debug)]
-pub(crate) struct TopSet {
-    pub first: usize,
-    pub last: usize,
-    pub bars: Bars,
-}
-
-/// Effective depth of T1, mm.
-pub(super) fn depth(work: &Work, size: u32) -> f64 {
-    work.h() - work.slab.cover.top.value - f64::from(size) / 2.0
-}
 
 /// The bars at every support: the design's, or the planner's at an end support where none are given (D10a).
 pub(super) fn decide(work: &mut Work) -> Vec<TopSet> {
@@ -177,7 +164,7 @@ fn plan_set(work: &mut Work, set: &TopSet, ends: &Ends) {
     };
     let inner = set.first > 0 && set.last < last;
     let is_single_end = set.first == set.last && !inner;
-    let full = pattern::all_run_on(work, &set.bars, depth(work, set.bars.size));
+    let full = pattern::all_run_on(work, &set.bars, work.top_depth(set.bars.size));
     let size = set.bars.size;
     let one = |extra: f64| forms([true, false], extra);
     let other = |extra: f64| forms([false, true], extra);
@@ -227,7 +214,7 @@ fn closing_level(work: &Work, made: &crate::steel::made::Made) -> f64 {
 fn set_lines(work: &Work, set: &TopSet, ends: &Ends) -> Vec<f64> {
     let at_end = ends.0.iter().enumerate().find(|(_, e)| e.own.is_none() && (e.support == set.first || e.support == set.last));
     match at_end {
-        Some((side, end)) => super::ends::closing_lines(work, end, side, &set.bars),
+        Some((side, end)) => super::closing::closing_lines(work, end, side, &set.bars),
         None => lines::across(work.slab.width.value, work.side(), set.bars.size, set.bars.spacing),
     }
 }

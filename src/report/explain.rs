@@ -39,8 +39,9 @@ pub fn explain(model: &BarModel, source: &str, address: &str) -> Result<Vec<Answ
     if let Some((slab, mark)) = address.split_once("/mark:")
         && let Some(bar) = model.slabs.iter().filter(|s| s.mark == slab).flat_map(|s| &s.bars).find(|b| b.mark == mark)
     {
-        let mut zones: Vec<&str> = bar.sets.iter().map(|s| s.zone.as_str()).collect();
+        let mut zones: Vec<String> = bar.sets.iter().map(|s| s.zone.clone()).collect();
         zones.dedup();
+        zones.extend(zones.iter().flat_map(|zone| neighbours(model, zone)).collect::<Vec<_>>());
         for zone in zones {
             let prefix = format!("{zone}/");
             wanted.extend(known().filter(|a| a.starts_with(&prefix)).map(str::to_string));
@@ -57,6 +58,21 @@ pub fn explain(model: &BarModel, source: &str, address: &str) -> Result<Vec<Answ
     let mut seen = std::collections::BTreeSet::new();
     wanted.retain(|a| seen.insert(a.clone()));
     Ok(wanted.into_iter().map(|a| Answer { steps: lines(model.ledger.get(&a).unwrap_or(&[]), source), address: a }).collect())
+}
+
+/// The supports at both ends of a span's bottom bars, where their laps and ends are decided; the supports of top bars that run through.
+fn neighbours(model: &BarModel, zone: &str) -> Vec<String> {
+    let Some((slab, rest)) = zone.split_once('/') else { return Vec::new() };
+    let grids = model.slabs.iter().find(|s| s.mark == slab).map_or(&[][..], |s| &s.grids);
+    if let Some(number) = rest.strip_prefix("span:").and_then(|r| r.strip_suffix("/B1")) {
+        let span: usize = number.parse().unwrap_or(1);
+        return grids.iter().skip(span.saturating_sub(1)).take(2).map(|grid| format!("{slab}/support:{grid}/B1")).collect();
+    }
+    let Some(names) = rest.strip_prefix("support:").and_then(|r| r.strip_suffix("/T1")) else { return Vec::new() };
+    // A set that runs through carries the names of its supports in a row.
+    let rows = (0..grids.len()).flat_map(|i| (i + 2..=grids.len()).map(move |j| &grids[i..j]));
+    let own = rows.into_iter().find(|row| row.join("-") == names).unwrap_or(&[]);
+    own.iter().map(|grid| format!("{slab}/support:{grid}/T1")).collect()
 }
 
 fn last_part(address: &str) -> &str {

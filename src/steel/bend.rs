@@ -151,7 +151,8 @@ impl Bent {
 /// A sum as it is written by hand: letters first, then r, R and d.
 pub fn formula(sum: &Sum) -> String {
     let mut terms: Vec<(&String, f64)> = sum.iter().map(|(n, f)| (n, *f)).collect();
-    terms.sort_by_key(|(name, _)| (["one", "r", "R", "d"].contains(&name.as_str()), name.to_lowercase(), *name));
+    let last = ["r", "R", "d", "one"];
+    terms.sort_by_key(|(name, _)| (last.iter().position(|l| l == name).map_or(0, |i| i + 1), *name));
     let mut text = String::new();
     for (name, factor) in terms {
         let sign = match (text.is_empty(), factor < 0.0) {
