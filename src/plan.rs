@@ -240,9 +240,11 @@ fn plan_slab(basis: &Basis, slab: &Slab) -> Plan {
     stations::explain(&mut work);
     let tops = top::decide(&mut work);
     let mut ends = ends::decide(&mut work, &tops);
+    let sets = top::join(&mut work, tops, &mut ends);
     bottom::plan(&mut work, &ends);
-    closing::lap(&mut work, &mut ends);
-    top::plan(&mut work, tops, &ends);
+    closing::lap(&mut work, &mut ends, false);
+    top::plan(&mut work, &sets, &ends);
+    closing::lap(&mut work, &mut ends, true);
     closing::close(&mut work, &ends);
     closing::hold(&mut work, &ends);
     distribution::plan(&mut work);

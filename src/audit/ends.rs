@@ -51,7 +51,11 @@ fn bottom(slate: &mut Slate, support: usize, left: bool) {
     let face = inner_face(slate, support, left);
     let span = slate.model.stations.spans[k].clone();
     let x = if left { face - 1.0 } else { face + 1.0 };
-    let running = slate.pieces.along(|p| p.layer == Layer::B1 && p.covers(0, x));
+    // In a short span bars that stop may stop past the face: those that run on reach the cover line.
+    let side = slate.slab.cover.side.value;
+    let (start, end) = (slate.model.stations.start + side, slate.model.stations.end - side);
+    let reaches = |p: &Piece| if left { p.low[0] <= start + 60.0 } else { p.high[0] >= end - 60.0 };
+    let running = slate.pieces.along(|p| p.layer == Layer::B1 && p.covers(0, x) && reaches(p));
     let at = format!("support:{}/B1", slate.model.grids[support]);
     let area = area_at(&running, 0, x, 1);
     if area <= 0.0 {
@@ -93,7 +97,7 @@ fn closing_lap(slate: &Slate, running: &[&Piece], left: bool) -> Option<(f64, f6
     let h = slate.h();
     let (start, end) = (slate.model.stations.start, slate.model.stations.end);
     let near_end = |p: &Piece| if left { p.low[0] < start + 150.0 } else { p.high[0] > end - 150.0 };
-    let legs = slate.pieces.along(|p| p.layer == Layer::E && p.role == Role::EndTop && p.low[2] < h / 2.0 && near_end(p));
+    let legs = slate.pieces.along(|p| p.layer == Layer::E && !p.straight && p.low[2] < h / 2.0 && near_end(p));
     let first = legs.first()?;
     let mean = super::pieces::Row::of(legs.iter().copied(), 1).mean();
     let size = first.size.min(running.first()?.size) as u32;

@@ -51,11 +51,11 @@ fn pieces(slate: &mut Slate) {
     for group in &slate.pieces.by_axis[..2] {
         let Some(axis) = group.first().map(|p| p.axis) else { continue };
         let across = 1 - axis;
-        let mut sorted: Vec<&Piece> = group.iter().filter(|p| p.role != Role::EndTop || p.layer != Layer::E).collect();
+        let mut sorted: Vec<&Piece> = group.iter().filter(|p| p.straight || p.layer != Layer::E || p.role == Role::SupportTop).collect();
         sorted.sort_by(|a, b| a.low[across].total_cmp(&b.low[across]));
         for (i, a) in sorted.iter().enumerate() {
             for b in sorted[i + 1..].iter().take_while(|b| b.low[across] - a.low[across] <= 3.0 * a.size + 1.0) {
-                let alike = a.layer == b.layer && a.role == b.role && a.bar != b.bar && (a.low[2] - b.low[2]).abs() < 1.0;
+                let alike = a.zone == b.zone && a.role == b.role && a.bar != b.bar && (a.low[2] - b.low[2]).abs() < 1.0;
                 let overlap = a.overlap(b);
                 if !alike || overlap <= 1.0 || overlap > 0.5 * a.length().min(b.length()) {
                     continue;

@@ -11,6 +11,8 @@ pub struct Piece {
     pub bar: usize,
     /// Index of its mark in the slab.
     pub kind: usize,
+    /// Number of its zone, counted over the slab.
+    pub zone: usize,
     pub layer: Layer,
     pub role: Role,
     pub size: f64,
@@ -45,14 +47,21 @@ pub struct Pieces {
 impl Pieces {
     pub fn of(slab: &SlabModel) -> Pieces {
         let mut by_axis: [Vec<Piece>; 3] = Default::default();
+        let mut zones: Vec<&str> = Vec::new();
         let mut bar = 0;
         for (kind, mark) in slab.bars.iter().enumerate() {
-            for axis in mark.placements() {
-                for pair in axis.windows(2) {
-                    let piece = piece(kind, mark, bar, pair[0], pair[1]);
-                    by_axis[piece.axis].push(piece);
+            for set in &mark.sets {
+                let zone = zones.iter().position(|z| *z == set.zone).unwrap_or(zones.len());
+                if zone == zones.len() {
+                    zones.push(&set.zone);
                 }
-                bar += 1;
+                for axis in set.bars() {
+                    for pair in axis.windows(2) {
+                        let piece = piece([kind, bar, zone], mark, pair[0], pair[1]);
+                        by_axis[piece.axis].push(piece);
+                    }
+                    bar += 1;
+                }
             }
         }
         Pieces { by_axis }
@@ -72,11 +81,32 @@ impl Pieces {
     }
 }
 
-fn piece(kind: usize, mark: &BarType, bar: usize, a: Point3, b: Point3) -> Piece {
+fn piece([kind, bar, zone]: [usize; 3], mark: &BarType, a: Point3, b: Point3) -> Piece {
     let axis = (0..3).max_by(|i, j| (a[*i] - b[*i]).abs().total_cmp(&(a[*j] - b[*j]).abs())).unwrap_or(0);
     let low = std::array::from_fn(|i| a[i].min(b[i]));
     let high = std::array::from_fn(|i| a[i].max(b[i]));
-    Piece { bar, kind, layer: mark.layer, role: mark.role, size: f64::from(mark.size), axis, low, high, straight: mark.is_straight() }
+    Piece { bar, kind, zone, layer: mark.layer, role: mark.role, size: f64::from(mark.size), axis, low, high, straight: mark.is_straight() }
+}
+
+/// Pieces that lap within a span are one continuous line of steel: each chain of them as one piece. Laps over a support do not chain.
+pub fn chained(pieces: &[&Piece], supports: &[f64]) -> Vec<Piece> {
+    let mut sorted: Vec<Piece> = pieces.iter().map(|p| (*p).clone()).collect();
+    sorted.sort_by(|a, b| a.low[0].total_cmp(&b.low[0]));
+    let mut chains: Vec<Piece> = Vec::new();
+    for piece in sorted {
+        let follows = |chain: &Piece| {
+            let overlap = chain.high[0].min(piece.high[0]) - piece.low[0];
+            let beside = (chain.low[1] - piece.low[1]).abs() - (chain.size + piece.size) / 2.0 <= 50.0;
+            let (from, to) = (piece.low[0], chain.high[0]);
+            let over_support = piece.layer == Layer::B1 && supports.iter().any(|x| from < *x && *x < to);
+            overlap > 100.0 && overlap < 0.5 * piece.length() && piece.high[0] > chain.high[0] && beside && !over_support && chain.zone == piece.zone
+        };
+        match chains.iter_mut().find(|c| follows(c)) {
+            Some(chain) => chain.high = piece.high,
+            None => chains.push(piece),
+        }
+    }
+    chains
 }
 
 /// Sorted places of pieces on an axis, and the widest and the mean gap between neighbours, mm.
@@ -91,8 +121,18 @@ impl Row {
         Row { places }
     }
 
+    /// The widest gap, mm.
     pub fn widest(&self) -> f64 {
         self.places.windows(2).map(|w| w[1] - w[0]).fold(0.0, f64::max)
+    }
+
+    /// The widest gap, less what a bar adds that is set aside by up to its own size to lap in contact or keep clear of another, mm.
+    pub fn widest_called(&self, size: f64) -> f64 {
+        let mut gaps: Vec<f64> = self.places.windows(2).map(|w| w[1] - w[0]).collect();
+        gaps.sort_by(f64::total_cmp);
+        let Some(median) = gaps.get(gaps.len() / 2).copied() else { return 0.0 };
+        let widest = self.widest();
+        if widest - median <= 2.0 * size { widest.min(median) } else { widest }
     }
 
     /// Centre distance that would give the same number over the same width, mm; infinite for under two bars.

@@ -21,7 +21,7 @@ fn bottom(slate: &mut Slate, h: f64) {
         let row = |x: f64| Row::of(main.iter().copied().filter(|p| p.covers(0, x)), 1);
         let at_middle = row(middle);
         let size = main.iter().filter(|p| p.covers(0, middle)).map(|p| p.size).fold(0.0, f64::max);
-        let (left, right) = (row(span.left_face).widest(), row(span.right_face).widest());
+        let (left, right) = (row(span.left_face).widest_called(size), row(span.right_face).widest_called(size));
         let distribution = slate.pieces.across(|p| p.role == Role::DistributionBottom && p.low[0] > span.left_face && p.low[0] < span.right_face);
         let mut places: Vec<f64> = distribution.iter().map(|p| p.low[0]).collect();
         // Lapped pieces of one bar stand side by side: one place.
@@ -29,7 +29,7 @@ fn bottom(slate: &mut Slate, h: f64) {
         places.dedup_by(|a, b| (*a - *b).abs() < 60.0);
         let widest = Row { places }.widest();
         let at = format!("span:{}", k + 1);
-        slate.at_most("spacing-most", &format!("{at}/B1"), at_middle.widest(), spacing::most(Zone::MainPeak, h), "mm");
+        slate.at_most("spacing-most", &format!("{at}/B1"), at_middle.widest_called(size), spacing::most(Zone::MainPeak, h), "mm");
         slate.at_most("spacing-run-on", &format!("{at}/B1/left"), left, spacing::most(Zone::Main, h), "mm");
         slate.at_most("spacing-run-on", &format!("{at}/B1/right"), right, spacing::most(Zone::Main, h), "mm");
         slate.at_most("spacing-distribution", &format!("{at}/B2"), widest, spacing::most(Zone::DistributionPeak, h), "mm");
@@ -49,14 +49,14 @@ fn top(slate: &mut Slate, h: f64) {
         let row = Row::of(over.iter().copied(), 1);
         let size = over.iter().map(|p| p.size).fold(0.0, f64::max);
         let (low, high) = (over.iter().map(|p| p.low[0]).fold(f64::INFINITY, f64::min), over.iter().map(|p| p.high[0]).fold(f64::NEG_INFINITY, f64::max));
-        let ends = [low + 1.0, high - 1.0].map(|x| Row::of(main.iter().copied().filter(|p| p.covers(0, x)), 1).widest());
+        let ends = [low + 1.0, high - 1.0].map(|x| Row::of(main.iter().copied().filter(|p| p.covers(0, x)), 1).widest_called(size));
         let mut places: Vec<f64> =
             slate.pieces.across(|p| p.role == Role::DistributionTop && p.low[0] > low && p.low[0] < high).iter().map(|p| p.low[0]).collect();
         places.sort_by(f64::total_cmp);
         places.dedup_by(|a, b| (*a - *b).abs() < 60.0);
         let distribution = Row { places }.widest();
         let at = format!("support:{}", slate.model.grids[j]);
-        slate.at_most("spacing-most", &format!("{at}/T1"), row.widest(), spacing::most(Zone::MainPeak, h), "mm");
+        slate.at_most("spacing-most", &format!("{at}/T1"), row.widest_called(size), spacing::most(Zone::MainPeak, h), "mm");
         slate.at_most("spacing-run-on", &format!("{at}/T1/left"), ends[0], spacing::most(Zone::Main, h), "mm");
         slate.at_most("spacing-run-on", &format!("{at}/T1/right"), ends[1], spacing::most(Zone::Main, h), "mm");
         slate.at_most("spacing-distribution", &format!("{at}/T2"), distribution, spacing::most(Zone::DistributionPeak, h), "mm");

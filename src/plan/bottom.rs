@@ -40,11 +40,31 @@ pub(super) fn plan(work: &mut Work, ends: &Ends) {
         let set = decide(work, k, ends, sets.last());
         sets.push(set);
     }
+    for k in (1..count).step_by(2) {
+        sets[k].lines = clear_of_neighbours(work, k, &sets);
+    }
     let half_laps: Vec<f64> = (1..count).map(|j| half_lap(work, j, &sets)).collect();
     let mut right_ends: Option<f64> = None;
     for (k, set) in sets.iter().enumerate() {
         right_ends = place(work, k, set, ends, &half_laps, right_ends);
     }
+}
+
+/// Lines of a set's bars that run on at one end.
+fn on_lines(set: &SpanSet, right_end: bool) -> Vec<f64> {
+    let parts = pattern::parts(set.turn, &set.lines, set.phase[0]).into_iter();
+    parts.filter(|p| if right_end { p.right_on } else { p.left_on }).flat_map(|p| p.lines).collect()
+}
+
+/// Where the spacings of neighbouring spans differ, their lines drift past one another: a bar that would meet one it laps with
+/// moves into contact beside it.
+fn clear_of_neighbours(work: &Work, k: usize, sets: &[SpanSet]) -> Vec<f64> {
+    let size = f64::from(sets[k].bars.size);
+    let of = |set: &SpanSet, right_end: bool| -> Vec<(f64, f64)> { on_lines(set, right_end).into_iter().map(|y| (y, f64::from(set.bars.size))).collect() };
+    let mut others = of(&sets[k - 1], true);
+    others.extend(sets.get(k + 1).map(|next| of(next, false)).unwrap_or_default());
+    let (low, high) = (work.side() + size / 2.0, work.slab.width.value - work.side() - size / 2.0);
+    sets[k].lines.iter().map(|y| lines::clear_of(*y, size, &others, low, high)).collect()
 }
 
 fn decide(work: &mut Work, k: usize, ends: &Ends, before: Option<&SpanSet>) -> SpanSet {
@@ -133,14 +153,7 @@ fn trial_lap(work: &Work, bars: &Bars) -> f64 {
 fn half_lap(work: &mut Work, j: usize, sets: &[SpanSet]) -> f64 {
     let (left, right) = (&sets[j - 1], &sets[j]);
     let small = left.bars.size.min(right.bars.size);
-    let on = |set: &SpanSet, right_end: bool| -> Vec<f64> {
-        pattern::parts(set.turn, &set.lines, set.phase[0])
-            .into_iter()
-            .filter(|p| if right_end { p.right_on } else { p.left_on })
-            .flat_map(|p| p.lines)
-            .collect()
-    };
-    let (a, b) = (on(left, true), on(right, false));
+    let (a, b) = (on_lines(left, true), on_lines(right, false));
     let apart = lines::worst_gap(&a, f64::from(left.bars.size), &b, f64::from(right.bars.size));
     let on_spacing = |set: &SpanSet| if set.turn == Turn::Full { set.bars.spacing } else { 2.0 * set.bars.spacing };
     let between = on_spacing(left).min(on_spacing(right)) - f64::from(left.bars.size + right.bars.size);

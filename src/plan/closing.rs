@@ -11,11 +11,12 @@ use crate::tables::tables;
 use crate::trace::{Step, rule};
 
 /// Sets the leg back of the closing bars that B1 needs, now that B1 stands: the full lap, and what it grows by where bars stand apart.
-pub(super) fn lap(work: &mut Work, ends: &mut Ends) {
+/// Bars of their own are looked at after the top bars stand, which they keep clear of (`own`).
+pub(super) fn lap(work: &mut Work, ends: &mut Ends, own: bool) {
     for side in 0..2 {
         let end = ends.0[side].clone();
         let closes = matches!(end.top, TopEnd::Closed { .. }) || end.own.is_some();
-        if end.bottom != BottomEnd::Closed || !closes {
+        if end.bottom != BottomEnd::Closed || !closes || end.own.is_some() != own {
             continue;
         }
         let bars = end.own.as_ref().unwrap_or(&end.bars).clone();
@@ -58,14 +59,20 @@ pub(super) fn closing_lines(work: &Work, end: &EndPlan, side: usize, bars: &Bars
     let size = f64::from(bars.size);
     let base = lines::across(work.slab.width.value, work.side(), bars.size, bars.spacing);
     let closes = end.own.is_some() || matches!(end.top, TopEnd::Closed { .. });
-    let turned = matches!(end.top, TopEnd::Turned { .. });
+    // How low a leg turned down reaches.
+    let foot = match end.top {
+        TopEnd::Turned { leg } => work.h() - work.slab.cover.top.value - leg,
+        _ => work.h(),
+    };
     let face = face(work, side);
-    let reach = if closes { end.back.max(end.lap).max(1000.0) } else { 0.0 };
+    // A bar between two faces stands back from both by half of its deduction and its rounding.
+    let reach = if closes { end.back.max(end.lap).max(1000.0) } else { 60.0 };
     let near = |r: &&Run| {
         let (low, high) = r.made.extent();
-        r.layer == Layer::B1 && if side == 0 { low - reach <= face + 1.0 } else { high + reach >= face - 1.0 }
+        let top = end.own.is_some() && matches!(r.role, Role::EndTop | Role::SupportTop);
+        (r.layer == Layer::B1 || top) && if side == 0 { low - reach <= face + 1.0 } else { high + reach >= face - 1.0 }
     };
-    let own_level = |r: &&Run| closes || turned && r.made.shape != "00";
+    let own_level = |r: &&Run| closes || r.made.axis.iter().any(|p| r.z + p.1 + r.size() / 2.0 > foot);
     let others: Vec<(f64, f64)> =
         work.plan.runs.iter().filter(near).filter(own_level).flat_map(|r| r.lines.iter().map(|y| (*y, r.size())).collect::<Vec<_>>()).collect();
     let (low, high) = (work.side() + size / 2.0, work.slab.width.value - work.side() - size / 2.0);
@@ -89,7 +96,7 @@ pub(super) fn close(work: &mut Work, ends: &Ends) {
         let grid = work.slab.supports[end.support].grid.clone();
         work.plan.runs.push(Run {
             layer: Layer::E,
-            role: Role::EndTop,
+            role: Role::Edge,
             along: Along::X,
             made,
             lines,

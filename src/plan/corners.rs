@@ -45,7 +45,10 @@ fn along_span(work: &mut Work, support: usize, side: usize) {
     let extent = EXTENT * work.stations.spans[k].effective;
     let width = work.slab.width.value;
     let reach_across = work.slab.edge_width[side] + extent;
-    let inside = |y: f64| if side == 0 { y <= reach_across } else { y >= width - reach_across };
+    // A narrow slab's two corners may share bars.
+    let zone = format!("{zone}/corner");
+    let known: Vec<f64> = work.plan.runs.iter().filter(|r| r.zone == zone).flat_map(|r| r.lines.clone()).collect();
+    let inside = |y: f64| if side == 0 { y <= reach_across } else { y >= width - reach_across && known.iter().all(|k| (k - y).abs() > 1.0) };
     let lines: Vec<f64> = all.iter().tuple_windows().map(|(a, b)| (a + b) / 2.0).filter(|y| inside(*y)).collect();
     let span = &work.stations.spans[k];
     let (face, to) = if at_start {
@@ -74,7 +77,7 @@ fn along_span(work: &mut Work, support: usize, side: usize) {
         lines,
         z,
         spacing: step,
-        zone: format!("{zone}/corner"),
+        zone,
         lap: 0.0,
         turn: "",
     });

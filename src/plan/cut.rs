@@ -67,7 +67,7 @@ pub(super) fn push(work: &mut Work, run: Run, forms: [Form; 2], sizes_aside: f64
     let longest = work.basis.longest_bar.value;
     let closes_both = forms.iter().all(|f| matches!(f, Form::Closed { .. }));
     if f64::from(run.made.length) <= longest && !closes_both {
-        work.plan.runs.push(run);
+        stand(work, run);
         return;
     }
     let size = run.made.size;
@@ -102,9 +102,24 @@ pub(super) fn push(work: &mut Work, run: Run, forms: [Form; 2], sizes_aside: f64
             let lines = if i % 2 == 1 { lines::beside(&own, sizes_aside * run.size(), limit) } else { own.clone() };
             let lap = if i == 0 { run.lap } else { extents[i - 1].1 - low };
             let made = between(size, left, right, &work.basis.deduction);
-            work.plan.runs.push(Run { made, lines, lap, turn: "alt", ..run.clone() });
+            stand(work, Run { made, lines, lap, turn: "alt", ..run.clone() });
         }
     }
+}
+
+/// Adds a run along the span; a line that would meet a bar of its layer that stands there already moves into contact beside it.
+fn stand(work: &mut Work, mut run: Run) {
+    let (from, to) = run.made.extent();
+    let meets = |r: &&Run| {
+        let (low, high) = r.made.extent();
+        r.along == Along::X && r.layer == run.layer && r.role == run.role && low < to - 1.0 && high > from + 1.0
+    };
+    let others: Vec<(f64, f64)> = work.plan.runs.iter().filter(meets).flat_map(|r| r.lines.iter().map(|y| (*y, r.size())).collect::<Vec<_>>()).collect();
+    let half = run.size() / 2.0;
+    let (low, high) = (work.side() + half, work.slab.width.value - work.side() - half);
+    let lines = run.lines.iter().map(|y| lines::clear_of(*y, run.size(), &others, low, high)).collect();
+    run.lines = lines;
+    work.plan.runs.push(run);
 }
 
 /// Adds a run across the slab, cut into equal pieces lapped at one section where it is longer than may be scheduled.

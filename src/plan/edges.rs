@@ -30,19 +30,20 @@ fn face(work: &Work, side: usize) -> f64 {
 
 /// Upright of an edge bar: from the underside of the B2 level to the top of the T2 level, less the deduction.
 fn depth(work: &Work) -> f64 {
-    let bottom = work.slab.spans.iter().map(|s| f64::from(s.bottom.value.size)).fold(0.0, f64::max);
+    let outer = work.plan.runs.iter().filter(|r| r.along == Along::X && (r.layer == Layer::B1 || r.layer == Layer::E && r.made.shape != "00"));
+    let bottom = outer.map(Run::size).fold(0.0, f64::max);
     work.upright(work.between_covers() - bottom - work.largest_top())
 }
 
-/// Lines and sizes of the bars across the slab that reach this side edge, in one layer.
-fn crossing_bars(work: &Work, side: usize, layers: &[Layer]) -> Vec<(f64, f64)> {
+/// Lines and sizes of the bars across the slab that come within `reach` of this side edge, in these layers; bars held at the
+/// slab ends and the legs of the other side's edge bars count with them.
+fn crossing_bars(work: &Work, side: usize, layers: &[Layer], reach: f64) -> Vec<(f64, f64)> {
     let edge = face(work, side);
-    let reach = 2.0 * work.h();
     let near_edge = |r: &&Run| {
         let (low, high) = r.made.extent();
         if side == 0 { low <= edge + reach } else { high >= edge - reach }
     };
-    let across = work.plan.runs.iter().filter(|r| r.along == Along::Y && (layers.contains(&r.layer) || r.role == Role::Edge && r.made.shape == "00"));
+    let across = work.plan.runs.iter().filter(|r| r.along == Along::Y && (layers.contains(&r.layer) || r.role == Role::Edge));
     across.filter(near_edge).flat_map(|r| r.lines.iter().map(|x| (*x, r.size())).collect::<Vec<_>>()).collect()
 }
 
@@ -73,10 +74,11 @@ fn free(work: &mut Work, side: usize) {
 /// In contact beside each B2 bar, on the side where no T2 bar stands; between those and to the slab ends at the B2 spacing.
 fn free_lines(work: &Work, side: usize, size: u32, called: &Bars) -> Vec<f64> {
     let d = f64::from(size);
-    let bottom = crossing_bars(work, side, &[Layer::B2]);
-    let top = crossing_bars(work, side, &[Layer::T2]);
+    let reach = 2.0 * work.h();
+    let top = crossing_bars(work, side, &[Layer::T2], reach);
+    let bottom: Vec<(f64, f64)> = bottom_bars(work, side);
     let (start, end) = (work.stations.start + work.side(), work.stations.end - work.side());
-    let others: Vec<(f64, f64)> = bottom.iter().chain(&top).copied().collect();
+    let others = crossing_bars(work, side, &[Layer::B2, Layer::T2], reach);
     let middle = (start + end) / 2.0;
     // Towards the middle of the slab, so that a bar held in a bend at a slab end keeps its edge bar inside it.
     let beside = |(x, s): &(f64, f64)| {
@@ -103,6 +105,21 @@ fn free_lines(work: &Work, side: usize, size: u32, called: &Bars) -> Vec<f64> {
     lines
 }
 
+/// Lines and sizes of B2, and of the innermost bar held at each slab end: what edge bars stand beside.
+fn bottom_bars(work: &Work, side: usize) -> Vec<(f64, f64)> {
+    let edge = face(work, side);
+    // Of a bar in lapped pieces only the piece at this edge counts.
+    let at_edge = |r: &Run| if side == 0 { r.made.extent().0 < edge + 60.0 } else { r.made.extent().1 > edge - 60.0 };
+    let straight = |role: Role| work.plan.runs.iter().filter(move |r| r.along == Along::Y && r.role == role && r.made.shape == "00" && at_edge(r));
+    let lines = |r: &Run| r.lines.iter().map(|x| (*x, r.size())).collect::<Vec<_>>();
+    let mut bars: Vec<(f64, f64)> = straight(Role::DistributionBottom).flat_map(lines).collect();
+    let held: Vec<(f64, f64)> = straight(Role::Edge).flat_map(lines).collect();
+    let middle = (work.stations.start + work.stations.end) / 2.0;
+    bars.extend(held.iter().filter(|h| h.0 < middle).max_by(|a, b| a.0.total_cmp(&b.0)));
+    bars.extend(held.iter().filter(|h| h.0 >= middle).min_by(|a, b| a.0.total_cmp(&b.0)));
+    bars
+}
+
 fn held(work: &mut Work, side: usize) {
     let depth = depth(work);
     let address = format!("edge:{}", NAMES[side]);
@@ -127,7 +144,7 @@ fn held(work: &mut Work, side: usize) {
         let free = if serves { outside_tops(work, span.left_face, span.right_face) } else { vec![(span.left_face, span.right_face)] };
         let reach = up(work.slab.edge_width[side] - work.side() + fraction * span.effective, 5.0);
         let back = up(2.0 * work.h(), 5.0);
-        let others: Vec<(f64, f64)> = crossing_bars(work, side, &[Layer::B2, Layer::T2]);
+        let others: Vec<(f64, f64)> = crossing_bars(work, side, &[Layer::B2, Layer::T2], reach);
         let lines: Vec<f64> = free
             .iter()
             .flat_map(|(from, to)| lines::centred(*from, *to, bars.spacing))
@@ -204,13 +221,27 @@ fn hold(work: &mut Work, side: usize) {
     let y = face(work, side) + inward * off;
     let bottom = own.iter().map(|r| r.z - (depth_of(r) - r.size()) - r.size() / 2.0).fold(0.0, f64::max) + off;
     let top = own.iter().map(|r| r.z + r.size() / 2.0).fold(f64::INFINITY, f64::min) - off;
+    // Bars across the slab that the end bends hold cross these near the corners: one lies on the other.
+    let held: Vec<f64> = work.plan.runs.iter().filter(|r| r.role == Role::Edge && r.along == Along::Y && r.made.shape == "00").map(|r| r.z).collect();
+    let middle = work.h() / 2.0;
+    let over = |z: f64, other: f64| (z - other).abs() < d - crate::base::TOUCH;
+    let bottom = held.iter().filter(|z| **z < middle && over(bottom, **z)).map(|z| z + d).fold(bottom, f64::max);
+    let top = held.iter().filter(|z| **z >= middle && over(top, **z)).map(|z| z - d).fold(top, f64::min);
+    // They end inside the uprights that close the slab ends.
+    let uprights = [0, 1].map(|end| upright_size(work, super::fitting::face(work, end)));
     for z in [bottom, top] {
-        let forms = [Form::Straight(End::Face(work.stations.start + work.side())), Form::Straight(End::Face(work.stations.end - work.side()))];
+        let forms = [Form::Straight(End::Face(super::fitting::face(work, 0) + uprights[0])), Form::Straight(End::Face(super::fitting::face(work, 1) - uprights[1]))];
         let made = between(size, forms[0], forms[1], &work.basis.deduction);
         let spacing = work.slab.bottom_distribution.value.spacing;
         let run = Run { layer: Layer::E, role: Role::Edge, along: Along::X, made, lines: vec![y], z, spacing, zone: zone.clone(), lap: 0.0, turn: "" };
         cut::push_distribution(work, run, forms);
     }
+}
+
+/// The largest size of the bars along the span whose upright stands at a cover line, mm.
+fn upright_size(work: &Work, face: f64) -> f64 {
+    let stands = |r: &&Run| r.along == Along::X && r.made.axis.windows(2).any(|w| w[0].0 == w[1].0 && (w[0].0 - face).abs() < r.size() + 15.0);
+    work.plan.runs.iter().filter(stands).map(Run::size).fold(0.0, f64::max)
 }
 
 fn depth_of(run: &Run) -> f64 {

@@ -196,7 +196,10 @@ fn decide_bottom(work: &mut Work, side: usize, support: usize, k: usize, on: &Ba
     let grid = slab.supports[support].grid.clone();
     let bent = length(BarForm::Bent);
     let room = work.upright(work.between_covers());
-    let level = seat.value - work.side();
+    // A bar bent at both ends of a single span stands back by half of its deduction.
+    let room_along = (face - super::fitting::face(work, 1 - side)).abs();
+    let back = if slab.spans.len() == 1 { (room_along - crate::base::down(room_along - work.basis.deduction.for_bent(room_along), 5.0)) / 2.0 } else { 0.0 };
+    let level = seat.value - work.side() - back;
     let corner = 2.0 * (bar.radius + d) - std::f64::consts::FRAC_PI_2 * (bar.radius + d / 2.0);
     let leg = up(bar.projection.max(bent.value - level + corner), 5.0);
     steps.push(

@@ -35,17 +35,19 @@ pub fn beside(lines: &[f64], by: f64, limit: f64) -> Vec<f64> {
     lines.iter().map(|y| if y + by > limit + TOUCH { y - by } else { y + by }).collect()
 }
 
-/// The place nearest to `x` at which a bar of `size` overlaps none of the `others` (line, size), within `low..high`.
+/// The place nearest to `x` at which a bar of `size` overlaps none of the `others` (line, size), within `low..high`: in contact
+/// beside one of them where that is free, else the next free millimetre within reach; `x` itself where there is none.
 pub fn clear_of(x: f64, size: f64, others: &[(f64, f64)], low: f64, high: f64) -> f64 {
-    let overlaps = |at: f64| others.iter().any(|(o, s)| (at - o).abs() < (size + s) / 2.0 - TOUCH);
+    const REACH: i32 = 90;
+    let near: Vec<(f64, f64)> = others.iter().copied().filter(|(o, _)| (o - x).abs() < 3.0 * f64::from(REACH)).collect();
+    let overlaps = |at: f64| near.iter().any(|(o, s)| (at - o).abs() < (size + s) / 2.0 - TOUCH);
     if !overlaps(x) {
         return x;
     }
-    let touching = others.iter().flat_map(|(o, s)| [o + (size + s) / 2.0, o - (size + s) / 2.0]);
-    touching
-        .filter(|at| *at >= low - TOUCH && *at <= high + TOUCH && !overlaps(*at))
-        .min_by(|a, b| (a - x).abs().total_cmp(&(b - x).abs()).then(b.total_cmp(a)))
-        .unwrap_or(x)
+    let is_free = |at: &f64| *at >= low - TOUCH && *at <= high + TOUCH && !overlaps(*at);
+    let touching = near.iter().flat_map(|(o, s)| [o + (size + s) / 2.0, o - (size + s) / 2.0]);
+    let closest = touching.filter(is_free).min_by(|a, b| (a - x).abs().total_cmp(&(b - x).abs()).then(b.total_cmp(a)));
+    closest.or_else(|| (1..=REACH).flat_map(|mm| [x + f64::from(mm), x - f64::from(mm)]).find(is_free)).unwrap_or(x)
 }
 
 /// The greatest clear gap from a line of either set to its nearest in the other, mm.

@@ -131,18 +131,25 @@ fn joined(work: &mut Work, tops: Vec<TopSet>) -> Vec<TopSet> {
     sets
 }
 
-pub(super) fn plan(work: &mut Work, tops: Vec<TopSet>, ends: &Ends) {
-    let tops = tops
-        .into_iter()
-        .map(|mut set| {
-            for end in ends.0.iter().filter(|e| e.support == set.first) {
-                set.bars = end.bars.clone();
-            }
-            set
-        })
-        .collect();
-    for set in joined(work, tops) {
-        plan_set(work, &set, ends);
+/// The sets as they are laid: ends in the bars that bend into the depth, sets joined; the ends then carry their set's bars.
+pub(super) fn join(work: &mut Work, tops: Vec<TopSet>, ends: &mut Ends) -> Vec<TopSet> {
+    let bent = |mut set: TopSet| {
+        for end in ends.0.iter().filter(|e| e.support == set.first) {
+            set.bars = end.bars.clone();
+        }
+        set
+    };
+    let sets = joined(work, tops.into_iter().map(bent).collect());
+    for end in &mut ends.0 {
+        let own = sets.iter().find(|set| set.first <= end.support && end.support <= set.last);
+        end.bars = own.map_or(end.bars.clone(), |set| set.bars.clone());
+    }
+    sets
+}
+
+pub(super) fn plan(work: &mut Work, sets: &[TopSet], ends: &Ends) {
+    for set in sets {
+        plan_set(work, set, ends);
     }
 }
 
@@ -185,16 +192,19 @@ fn plan_set(work: &mut Work, set: &TopSet, ends: &Ends) {
             Some([_, other]) if turn == Turn::Reversed => *other,
             _ => forms([part.left_on, part.right_on], 0.0),
         };
-        let closes = own.iter().any(|f| matches!(f, Form::Closed { .. }));
+        // A closing bar stands on the bottom cover: its leg back lies in B1's level, its main leg the depth above.
+        let closed = own.iter().find_map(|f| match f {
+            Form::Closed { depth, .. } => Some(work.slab.cover.bottom.value + depth - f64::from(size) / 2.0),
+            _ => None,
+        });
         let made = between(size, own[0], own[1], &work.basis.deduction);
-        let z = if closes { closing_level(work, &made) } else { z };
         let run = Run {
-            layer: if closes { Layer::E } else { Layer::T1 },
+            layer: if closed.is_some() { Layer::E } else { Layer::T1 },
             role,
             along: Along::X,
             made,
             lines: part.lines,
-            z,
+            z: closed.unwrap_or(z),
             spacing: set.bars.spacing,
             zone: work.address(&zone),
             lap: ends.lap_of(set),
@@ -202,12 +212,6 @@ fn plan_set(work: &mut Work, set: &TopSet, ends: &Ends) {
         };
         cut::push(work, run, own, 1.0);
     }
-}
-
-/// A closing bar stands on the bottom cover: its leg back lies in B1's level, its main leg the depth above.
-fn closing_level(work: &Work, made: &crate::steel::made::Made) -> f64 {
-    let low = made.axis.iter().map(|p| p.1).fold(0.0, f64::min);
-    work.slab.cover.bottom.value + f64::from(made.size) / 2.0 - low
 }
 
 /// Lines of a set across the width; a set that ends at a slab end keeps off the bottom bars there.
