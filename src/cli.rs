@@ -8,6 +8,7 @@ mod lists;
 use clap::{CommandFactory, Parser, Subcommand};
 use std::io::Write;
 use std::path::PathBuf;
+use std::sync::atomic::{AtomicBool, Ordering};
 
 /// Exit status: done.
 const DONE: u8 = 0;
@@ -126,8 +127,20 @@ enum Verb {
     },
 }
 
+/// Whether results could not be written; a reader that has gone away does not count.
+static UNWRITTEN: AtomicBool = AtomicBool::new(false);
+
 /// Runs the command line and returns its exit status.
 pub fn run(arguments: impl IntoIterator<Item = std::ffi::OsString>) -> u8 {
+    let status = answer(arguments);
+    if UNWRITTEN.load(Ordering::Relaxed) {
+        talk("the results could not be written to standard output\n");
+        return FAILED;
+    }
+    status
+}
+
+fn answer(arguments: impl IntoIterator<Item = std::ffi::OsString>) -> u8 {
     let arguments = match Arguments::try_parse_from(arguments) {
         Ok(arguments) => arguments,
         Err(fault) => {
@@ -160,10 +173,14 @@ pub fn run(arguments: impl IntoIterator<Item = std::ffi::OsString>) -> u8 {
     }
 }
 
-/// Results, to standard output. A reader that has gone away is not a fault.
+/// Results, to standard output.
 fn say(text: &str) {
     let mut out = std::io::stdout().lock();
-    let _ = out.write_all(text.as_bytes()).and_then(|()| out.flush());
+    if let Err(fault) = out.write_all(text.as_bytes()).and_then(|()| out.flush())
+        && fault.kind() != std::io::ErrorKind::BrokenPipe
+    {
+        UNWRITTEN.store(true, Ordering::Relaxed);
+    }
 }
 
 /// Talk, to standard error.

@@ -1,6 +1,6 @@
 //! Faults and warnings of a job file, each at its place, and their text with the user's own line.
 
-use annotate_snippets::{AnnotationKind, Level, Renderer, Snippet};
+use annotate_snippets::{AnnotationKind, Level, Origin, Renderer, Snippet};
 
 /// No more faults than this are printed; the rest are counted.
 pub const MOST_FAULTS: usize = 100;
@@ -100,11 +100,11 @@ fn render_one(fault: &Fault, source: &str, path: &str, renderer: &Renderer) -> S
     if !fault.label.is_empty() {
         annotation = annotation.label(fault.label.as_str());
     }
-    let place = format!("{path}:{line}:{column}");
-    let mut group = level
-        .primary_title(fault.message.as_str())
-        .id(fault.code)
-        .element(Snippet::source(window).line_start(line).path(place.as_str()).annotation(annotation));
+    let snippet = Snippet::source(window).line_start(line).annotation(annotation);
+    let title = level.primary_title(fault.message.as_str()).id(fault.code);
+    // A window cut out of a long line would count its own columns: there the place is said by itself.
+    let is_cut = offset != line_start(source, fault.start);
+    let mut group = if is_cut { title.element(Origin::path(path).line(line).char_column(column)).element(snippet) } else { title.element(snippet.path(path)) };
     if !fault.rule.is_empty() {
         group = group.element(Level::NOTE.with_name("rule").message(fault.rule.as_str()));
     }
@@ -114,10 +114,15 @@ fn render_one(fault: &Fault, source: &str, path: &str, renderer: &Renderer) -> S
     renderer.render(&[group])
 }
 
+/// Where the line that holds a byte begins.
+fn line_start(source: &str, byte: usize) -> usize {
+    source[..floor_boundary(source, byte)].rfind('\n').map_or(0, |n| n + 1)
+}
+
 /// The line that holds `start`, cut to a window round the fault where it is very long.
 fn window(source: &str, start: usize, end: usize) -> (&str, usize) {
     const REACH: usize = 160;
-    let mut from = source[..floor_boundary(source, start)].rfind('\n').map_or(0, |n| n + 1);
+    let mut from = line_start(source, start);
     let rest = &source[floor_boundary(source, start)..];
     let mut to = start.min(source.len()) + rest.find('\n').unwrap_or(rest.len());
     if to > 0 && source[..floor_boundary(source, to)].ends_with('\r') {
@@ -138,4 +143,10 @@ fn floor_boundary(source: &str, byte: usize) -> usize {
         byte -= 1;
     }
     byte
+}
+
+/// What a user wrote, shortened for a message.
+pub fn shown(text: &str) -> String {
+    const MOST: usize = 40;
+    if text.chars().count() <= MOST { text.to_string() } else { format!("{}...", text.chars().take(MOST).collect::<String>()) }
 }

@@ -10,8 +10,8 @@ use crate::trace::{At, Place};
 
 pub const MOST_SPANS: usize = 20;
 pub const MOST_SLABS: usize = 200;
-/// Bars of one kind across one slab; keeps files and memory within reason.
-pub const MOST_ACROSS: usize = 5_000;
+/// Bars of one kind side by side in one slab; keeps files and memory within reason.
+pub const MOST_ACROSS: usize = 2_500;
 
 #[derive(Clone, Debug)]
 pub struct Job {

@@ -218,7 +218,7 @@ impl Work<'_> {
 
     /// Level and size of the level pieces of the bars along the span that a bar across it at `x` would meet.
     fn flats(&self, x: f64) -> impl Iterator<Item = (f64, f64)> {
-        let along = self.plan.runs.iter().filter(|r| r.along == Along::X && r.role != Role::Edge);
+        let along = self.plan.runs.iter().filter(|r| r.along == Along::X && (r.role != Role::Edge || r.made.shape != "00"));
         along.flat_map(move |r| {
             let level = r.made.axis.windows(2).filter(move |w| {
                 let (low, high) = (w[0].0.min(w[1].0), w[0].0.max(w[1].0));

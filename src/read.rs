@@ -1,7 +1,7 @@
 //! TOML with places: a cursor over a parsed file that gathers every fault and knows which keys were asked for.
 //! Knows TOML and faults; what the keys mean stands in `job`.
 
-use crate::diagnose::Fault;
+use crate::diagnose::{Fault, shown};
 use crate::trace::{At, Place};
 use itertools::Itertools;
 use std::cell::RefCell;
@@ -49,6 +49,9 @@ pub fn parse<'a>(source: &'a str, faults: &RefCell<Vec<Fault>>) -> Spanned<DeTab
 
 /// The nearest of the known names, where one is near enough to be meant.
 pub fn nearest<'n>(name: &str, known: impl IntoIterator<Item = &'n str>) -> Option<&'n str> {
+    if name.len() > 80 {
+        return None;
+    }
     known
         .into_iter()
         .map(|k| (strsim::damerau_levenshtein(&name.to_lowercase(), &k.to_lowercase()), k))
@@ -110,7 +113,7 @@ impl<'a> Section<'a> {
         let at = if self.path.is_empty() { "the file".into() } else { format!("[{}]", self.path) };
         let fault = Fault::new("missing-key", self.span.clone(), format!("{at} has no `{key}`"))
             .rule(format!("`{key}` is required here"))
-            .remedy(format!("add: {key} = {example}"));
+            .remedy(if example.starts_with('[') { format!("add {example}") } else { format!("add: {key} = {example}") });
         self.missing.borrow_mut().push((key, fault));
     }
 
@@ -141,6 +144,11 @@ impl<'a> Section<'a> {
                 None
             }
         }
+    }
+
+    /// A text without any word about its type.
+    pub fn peek(&self, key: &'static str) -> Option<&'a str> {
+        self.look(key)?.get_ref().as_str()
     }
 
     /// A number within a range; whole numbers and decimals both read. `unit` is for the message.
@@ -216,7 +224,7 @@ impl<'a> Section<'a> {
         let listed = words.iter().map(|(w, _)| format!("\"{w}\"")).join(", ");
         let near = nearest(&text.value, words.iter().map(|(w, _)| *w));
         self.fault(
-            Fault::new("unknown-word", self.span_of(key), format!("`{}` is {:?}", self.join(key), text.value))
+            Fault::new("unknown-word", self.span_of(key), format!("`{}` is {:?}", self.join(key), shown(&text.value)))
                 .label(near.map_or(String::new(), |n| format!("did you mean \"{n}\"?")))
                 .rule(format!("`{key}` is one of {listed}"))
                 .remedy(format!("write one of {listed}")),
@@ -225,11 +233,11 @@ impl<'a> Section<'a> {
     }
 
     /// A value that may be a text or a number.
-    pub fn text_or_number(&self, key: &'static str) -> Option<Result<At<String>, At<f64>>> {
+    pub fn text_or_number(&self, key: &'static str, unit: &str, most: f64, word: &str) -> Option<Result<At<String>, At<f64>>> {
         let value = self.look(key)?;
         match value.get_ref() {
-            DeValue::Integer(_) | DeValue::Float(_) => self.number(key, "mm", 0.0, 200.0).map(Err),
-            _ => self.text(key, "none").map(Ok),
+            DeValue::Integer(_) | DeValue::Float(_) => self.number(key, unit, 0.0, most).map(Err),
+            _ => self.text(key, word).map(Ok),
         }
     }
 

@@ -2,7 +2,9 @@
 
 #![allow(clippy::unwrap_used, clippy::expect_used, clippy::panic, clippy::print_stderr)]
 
+mod command_line;
 mod faults;
+mod hostile;
 mod outside;
 mod random_jobs;
 mod samples;

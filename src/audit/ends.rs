@@ -193,19 +193,20 @@ fn corners(slate: &mut Slate, support: usize, left: bool) {
 
 /// Legs of the U-bars at free edges, from the edge bar's outer face.
 fn legs(slate: &mut Slate) {
-    let h = slate.h();
-    for mark in slate.model.bars.iter().filter(|b| b.role == Role::Edge && !b.is_straight()) {
-        let free = slate.slab.edges.contains(&Edge::Free);
-        if free {
+    let limit = 2.0 * slate.h();
+    let width = slate.slab.width.value;
+    let stands_free = |mark: &crate::place::BarType| {
+        let upright = mark.sets.iter().flat_map(|s| s.axis.windows(2)).find(|w| w[0][2] != w[1][2] && w[0][1] == w[1][1]);
+        upright.is_some_and(|w| slate.slab.edges[usize::from(w[0][1] > width / 2.0)] == Edge::Free)
+    };
+    let bars = slate.model.bars.iter().filter(|b| b.role == Role::Edge && !b.is_straight() && !b.is_along_span() && stands_free(b));
+    let found: Vec<(String, f64)> = bars
+        .map(|mark| {
             let leg = mark.dims.iter().filter(|(l, _)| **l != 'B').map(|(_, v)| f64::from(*v)).fold(f64::INFINITY, f64::min);
-            slate.found.push(super::check(
-                "edge-leg",
-                if leg + super::SLACK >= 2.0 * h { Verdict::Pass } else { Verdict::Fail },
-                format!("{}/mark:{}", slate.slab.mark, mark.mark),
-                leg,
-                2.0 * h,
-                "mm",
-            ));
-        }
+            (format!("mark:{}", mark.mark), leg)
+        })
+        .collect();
+    for (at, leg) in found {
+        slate.at_least("edge-leg", &at, leg, limit, "mm");
     }
 }

@@ -17,6 +17,10 @@ pub fn explain(path: &str, address: &str, as_json: bool) -> u8 {
         Err(status) => return status,
     };
     let Some(set) = outcome.set else {
+        if as_json {
+            let faults: Vec<_> = outcome.faults.iter().map(|f| jobs::fault_json(f, &outcome.source)).collect();
+            envelope("explain", false, json!({ "job": name, "faults": faults }));
+        }
         jobs::show_faults(&outcome.faults, &outcome.source, &name);
         return FAULTS;
     };
@@ -33,7 +37,7 @@ pub fn explain(path: &str, address: &str, as_json: bool) -> u8 {
             if as_json {
                 envelope("explain", false, json!({ "job": name, "address": address, "near": near }));
             }
-            talk(&format!("nothing is known at {address:?}. Near it:\n  {}\n", near.join("\n  ")));
+            talk(&format!("nothing is known at {:?}. Near it:\n  {}\n", crate::diagnose::shown(address), near.join("\n  ")));
             FAILED
         }
     }
@@ -41,7 +45,7 @@ pub fn explain(path: &str, address: &str, as_json: bool) -> u8 {
 
 pub fn bend(shape: &str, size: &str, dims: &[String], as_json: bool) -> u8 {
     let parsed = || -> Result<Bent, String> {
-        let size: u32 = size.trim_start_matches(|c: char| c.is_ascii_alphabetic()).parse().map_err(|_| format!("size {size:?} is not a number of mm"))?;
+        let size: u32 = digits_of(size).parse().map_err(|_| format!("size {size:?} is not a number of mm"))?;
         let mut letters = Dims::new();
         for text in dims {
             let (letter, value) = text.split_once('=').ok_or(format!("{text:?}: write a dimension like A=1200"))?;
@@ -59,6 +63,9 @@ pub fn bend(shape: &str, size: &str, dims: &[String], as_json: bool) -> u8 {
     let bent = match parsed() {
         Ok(bent) => bent,
         Err(fault) => {
+            if as_json {
+                envelope("bend", false, json!({ "error": fault }));
+            }
             talk(&format!("{fault}\n"));
             return FAILED;
         }
@@ -97,6 +104,12 @@ pub fn bend(shape: &str, size: &str, dims: &[String], as_json: bool) -> u8 {
     if misses.is_empty() && walked.is_ok() { DONE } else { FAULTS }
 }
 
+/// A size with or without the letter of its steel.
+fn digits_of(size: &str) -> &str {
+    let letters = tables().materials.letters.iter();
+    letters.filter_map(|l| size.strip_prefix(l.letter.as_str())).next().unwrap_or(size)
+}
+
 /// What `lap` was asked.
 pub struct Lap {
     pub size: String,
@@ -108,18 +121,16 @@ pub struct Lap {
 }
 
 pub fn lap(asked: &Lap, as_json: bool) -> u8 {
-    let size: Option<u32> = asked.size.trim_start_matches(|c: char| c.is_ascii_alphabetic()).parse().ok();
+    let size: Option<u32> = digits_of(&asked.size).parse().ok();
     let bar = size.and_then(|s| tables().bar(s));
     let concrete = tables().materials.concrete.iter().find(|c| c.class == asked.concrete);
     let (Some(bar), Some(concrete)) = (bar, concrete) else {
         let classes = tables().materials.concrete.iter().map(|c| c.class.as_str()).collect::<Vec<_>>().join(", ");
-        talk(&format!("a size such as 12 and a class are needed; classes are {classes}\n"));
-        return FAILED;
+        return refuse_lap(as_json, &format!("a size such as 12 and a class are needed; classes are {classes}"));
     };
     let sound = (5.0..=200.0).contains(&asked.cover) && asked.spacing >= f64::from(bar.d) && asked.spacing <= 2000.0 && (1..=100).contains(&asked.share);
     if !sound {
-        talk("cover 5 to 200 mm, spacing from the size to 2000 mm, share 1 to 100 per cent\n");
-        return FAILED;
+        return refuse_lap(as_json, "cover 5 to 200 mm, spacing from the size to 2000 mm, share 1 to 100 per cent");
     }
     let bond = if asked.poor { Bond::Poor } else { Bond::Good };
     let make = |form: Form| {
@@ -152,6 +163,14 @@ pub fn lap(asked: &Lap, as_json: bool) -> u8 {
         say(&steps(&worked.steps));
     }
     DONE
+}
+
+fn refuse_lap(as_json: bool, why: &str) -> u8 {
+    if as_json {
+        envelope("lap", false, json!({ "error": why }));
+    }
+    talk(&format!("{why}\n"));
+    FAILED
 }
 
 fn steps(steps: &[Step]) -> String {

@@ -65,6 +65,9 @@ pub fn write_all(folder: &Path, files: &[Artifact], force: bool) -> Result<(), S
     std::fs::create_dir_all(folder).map_err(|e| fault("cannot be made", folder, e))?;
     for file in files {
         let place = folder.join(&file.name);
+        if place.symlink_metadata().is_ok_and(|m| !m.is_file()) {
+            return Err(format!("{}: is there and is not a plain file. Nothing was written.\n", place.display()));
+        }
         if place.exists() && !force && !is_ours(&place) {
             return Err(format!("{}: is there and was not made by this program; --force overwrites it. Nothing was written.\n", place.display()));
         }

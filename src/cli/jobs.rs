@@ -30,7 +30,7 @@ pub fn new(dir: &Path, force: bool) -> u8 {
             talk(&format!("Next: slabwright detail {} -o out\n", path.display()));
             DONE
         }
-        Err(e) if e.kind() == std::io::ErrorKind::AlreadyExists => {
+        Err(e) if e.kind() == std::io::ErrorKind::AlreadyExists && path.exists() => {
             talk(&format!("{}: is there; --force overwrites it\n", path.display()));
             FAILED
         }
@@ -63,7 +63,7 @@ pub fn show_faults(faults: &[Fault], source: &str, name: &str) {
     talk(&format!("{name}: {n} fault{}. Nothing was written.\n", if n == 1 { "" } else { "s" }));
 }
 
-fn fault_json(fault: &Fault, source: &str) -> Value {
+pub fn fault_json(fault: &Fault, source: &str) -> Value {
     let (line, column) = line_and_column(source, fault.start);
     let wrote: String = source.lines().nth(line - 1).unwrap_or("").chars().take(400).collect();
     json!({ "code": fault.code, "line": line, "column": column, "wrote": wrote, "message": fault.message, "rule": fault.rule, "remedy": fault.remedy })
@@ -89,6 +89,7 @@ pub fn check(jobs: &[String], strict: bool, as_json: bool) -> u8 {
             Ok(opened) => opened,
             Err(failed) => {
                 status = status.max(failed);
+                entries.push(json!({ "job": path, "unread": true, "faults": [], "checks": [], "reasons": [] }));
                 continue;
             }
         };
@@ -151,7 +152,7 @@ pub fn detail(jobs: &[String], folder: &Path, only: &[String], strict: bool, for
     for key in only {
         if !FORMATS.iter().any(|f| f.is_named(key)) {
             let near = crate::read::nearest(key, FORMATS.iter().flat_map(|f| [f.key, f.group]));
-            let hint = near.map_or(String::new(), |n| format!("; did you mean {n}?"));
+            let hint = near.map_or(".".to_string(), |n| format!("; did you mean {n}?"));
             talk(&format!("--only {key}: no such format{hint} Formats: {}\n", FORMATS.iter().flat_map(|f| [f.group, f.key]).unique().join(", ")));
             return FAILED;
         }

@@ -2,8 +2,8 @@
 
 use crate::audit::{Check, Verdict};
 use crate::base::{mm, num};
-use crate::job::{Edge, Job};
-use crate::place::{BarModel, BarType};
+use crate::job::{Edge, Job, Slab};
+use crate::place::{BarType, SlabModel};
 use crate::plan::{Layer, Role};
 use crate::tables::{Sentence, tables};
 use crate::trace::Cite;
@@ -13,8 +13,8 @@ fn fill(sentence: &Sentence, values: &[(&str, String)]) -> String {
     values.iter().fold(sentence.text.clone(), |text, (name, value)| text.replace(&format!("{{{name}}}"), value))
 }
 
-/// The numbered notes of the drawing.
-pub fn notes(job: &Job, model: &BarModel) -> Vec<String> {
+/// The numbered notes of a sheet of one slab.
+pub fn notes(job: &Job, slab: &Slab, placed: &SlabModel) -> Vec<String> {
     let t = tables();
     let note = |key: &str, values: &[(&str, String)]| t.notes.note.get(key).map(|s| fill(s, values)).unwrap_or_default();
     let basis = &job.basis;
@@ -28,22 +28,18 @@ pub fn notes(job: &Job, model: &BarModel) -> Vec<String> {
     if let Some(fire) = &basis.fire {
         notes.push(note("fire", &[("fire", fire.text.clone())]));
     }
-    for slab in &job.slabs {
-        let cover = &slab.cover;
-        let values = [("slab", slab.mark.clone()), ("bottom", mm(cover.bottom.value)), ("top", mm(cover.top.value)), ("side", mm(cover.side.value))];
-        notes.push(note("cover", &values));
-    }
+    let cover = &slab.cover;
+    let values = [("slab", slab.mark.clone()), ("bottom", mm(cover.bottom.value)), ("top", mm(cover.top.value)), ("side", mm(cover.side.value))];
+    notes.push(note("cover", &values));
     notes.push(note("layers", &[]));
     notes.push(note("spacing", &[]));
-    notes.push(laps(job, model, note));
-    for (slab, placed) in job.slabs.iter().zip(&model.slabs) {
-        if let Some(height) = chair_height(placed.thickness, &placed.bars) {
-            notes.push(note("chairs", &[("slab", slab.mark.clone()), ("height", mm(height))]));
-        }
-        for (edge, side) in slab.edges.iter().zip(["near", "far"]) {
-            if *edge == Edge::Joint {
-                notes.push(note("joint", &[("slab", slab.mark.clone()), ("side", side.to_string())]));
-            }
+    notes.push(laps(job, placed, note));
+    if let Some(height) = chair_height(placed.thickness, &placed.bars) {
+        notes.push(note("chairs", &[("slab", slab.mark.clone()), ("height", mm(height))]));
+    }
+    for (edge, side) in slab.edges.iter().zip(["near", "far"]) {
+        if *edge == Edge::Joint {
+            notes.push(note("joint", &[("slab", slab.mark.clone()), ("side", side.to_string())]));
         }
     }
     notes.push(note("spacers", &[]));
@@ -52,7 +48,7 @@ pub fn notes(job: &Job, model: &BarModel) -> Vec<String> {
     let source = t.cited(&Cite { source: sheet.source.clone().into(), clause: "".into() });
     notes.push(note("curtailment", &[("name", sheet.name.clone()), ("cite", source)]));
     let limit = t.notes.limits.handling_kg.value;
-    let heavy = model.bars().filter(|(_, b)| crate::steel::mass(b.size, b.length) > limit).map(|(_, b)| b.mark.clone()).join(", ");
+    let heavy = placed.bars.iter().filter(|b| crate::steel::mass(b.size, b.length) > limit).map(|b| b.mark.clone()).join(", ");
     if !heavy.is_empty() {
         notes.push(note("heavy", &[("marks", heavy), ("limit", num(limit, 0))]));
     }
@@ -61,8 +57,8 @@ pub fn notes(job: &Job, model: &BarModel) -> Vec<String> {
     notes
 }
 
-fn laps(job: &Job, model: &BarModel, note: impl Fn(&str, &[(&str, String)]) -> String) -> String {
-    let laps = model.slabs.iter().flat_map(|s| &s.laps);
+fn laps(job: &Job, placed: &SlabModel, note: impl Fn(&str, &[(&str, String)]) -> String) -> String {
+    let laps = placed.laps.iter();
     let by_size = laps.map(|(size, length)| (*size, *length)).into_grouping_map().max_by(|_, a, b| a.total_cmp(b));
     if by_size.is_empty() {
         return note("no_laps", &[]);

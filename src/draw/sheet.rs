@@ -37,11 +37,24 @@ struct Fit<'a> {
 
 /// Every sheet of a job.
 pub fn sheets(job: &Job, model: &BarModel, checks: &[Vec<Check>]) -> Vec<Scene> {
-    let texts = notes::notes(job, model);
-    let parts: Vec<(&Slab, &SlabModel, Fit)> =
-        job.slabs.iter().zip(&model.slabs).flat_map(|(slab, placed)| fits(job, slab, placed, &texts).into_iter().map(move |fit| (slab, placed, fit))).collect();
+    struct Part<'p> {
+        slab: &'p Slab,
+        placed: &'p SlabModel,
+        fit: Fit<'p>,
+        texts: Vec<String>,
+    }
+    let parts: Vec<Part> = job
+        .slabs
+        .iter()
+        .zip(&model.slabs)
+        .flat_map(|(slab, placed)| {
+            let texts = notes::notes(job, slab, placed);
+            let fits = fits(job, slab, placed, &texts);
+            fits.into_iter().map(move |fit| Part { slab, placed, fit, texts: texts.clone() })
+        })
+        .collect();
     let of = parts.len();
-    parts.iter().enumerate().map(|(i, (slab, placed, fit))| sheet(job, slab, placed, fit, checks, &texts, i + 1, of)).collect()
+    parts.iter().enumerate().map(|(i, p)| sheet(job, p.slab, p.placed, &p.fit, checks, &p.texts, i + 1, of)).collect()
 }
 
 fn column_width(size: &SheetSize) -> f64 {
@@ -89,19 +102,20 @@ fn fits<'a>(job: &Job, slab: &Slab, model: &SlabModel, texts: &[String]) -> Vec<
     let scales: Vec<f64> = all.scales.iter().filter(|s| job.head.scale.is_none_or(|wanted| wanted == **s)).map(|s| f64::from(*s)).collect();
     let st = &model.stations;
     let (low, high) = (st.start.min(st.supports[0].centre), st.end.max(st.supports[st.last()].centre));
-    let column_fits = |size: &SheetSize, view: &View| {
+    let texts_height: Vec<f64> = sizes.iter().map(|size| column::height(&View::new(size, 1.0, 0.0, 0.0, 0.0), texts, column_width(size) - 6.0)).collect();
+    let column_fits = |index: usize, size: &SheetSize, view: &View| {
         let room = frame::space(size).height() - frame::TITLE_HEIGHT - 16.0;
         let width = column_width(size) - 6.0;
         let beside = beside(size, view).is_some_and(|area| CloseUps::in_width(slab, area.width()).height() <= area.height());
         let close_ups = if beside { 0.0 } else { CloseUps::in_width(slab, width).height() };
-        column::height(view, texts, width) + close_ups <= room
+        texts_height[index] + close_ups <= room
     };
     for scale in &scales {
-        for size in &sizes {
+        for (index, size) in sizes.iter().enumerate() {
             let area = band_area(size);
             let view = View::new(size, *scale, low, high, band_area(size).min[0] + MARGIN);
             let wide = (high - low) / scale + 2.0 * MARGIN <= area.width();
-            if wide && bands_height(slab, model, &view, 0.0) <= area.height() && column_fits(size, &view) {
+            if wide && bands_height(slab, model, &view, 0.0) <= area.height() && column_fits(index, size, &view) {
                 return vec![Fit { size, scale: *scale, low, high, gap: None }];
             }
         }

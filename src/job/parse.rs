@@ -1,7 +1,7 @@
 //! The job file's head and basis, and the one way in.
 
 use super::*;
-use crate::diagnose::Fault;
+use crate::diagnose::{Fault, shown};
 use crate::read::{Section, nearest, parse, text};
 use crate::scene::Weight;
 use crate::tables::{Allowance, font, tables};
@@ -30,15 +30,34 @@ pub fn read(bytes: &[u8], load: Loader) -> Reading {
         let broken = !faults.borrow().is_empty();
         let root = Section::root(&table, &faults);
         let job = job(&root, load);
-        // After a syntax fault parts of the file were passed over: what seems missing may not be.
         if broken {
-            faults.borrow_mut().retain(|f: &Fault| f.code != "missing-key" && f.code != "support-count" && f.code != "missing-top");
+            keep_what_is_sure(&mut faults.borrow_mut(), &source);
         }
         job
     };
     let faults = crate::diagnose::sorted(faults.into_inner());
     let job = if faults.is_empty() { job } else { None };
     Reading { job, faults, source }
+}
+
+/// After a syntax fault parts of the file were passed over: what seems missing may not be, and what stands on the same line is the
+/// same slip told again.
+fn keep_what_is_sure(faults: &mut Vec<Fault>, source: &str) {
+    let line = |at: usize| crate::diagnose::line_and_column(source, at).0;
+    let broken: Vec<usize> = faults.iter().filter(|f| f.code == "syntax").map(|f| line(f.start)).collect();
+    let unsure = ["missing-key", "support-count", "missing-top", "no-slab", "no-span", "wrong-type"];
+    faults.retain(|f| f.code == "syntax" || !unsure.contains(&f.code) && !broken.contains(&line(f.start)));
+    // One slip may be told twice on its line: the first is enough.
+    let mut last = 0;
+    faults.sort_by_key(|f| f.start);
+    faults.retain(|f| {
+        let here = line(f.start);
+        let again = f.code == "syntax" && here == last;
+        if f.code == "syntax" {
+            last = here;
+        }
+        !again
+    });
 }
 
 fn job(root: &Section, load: Loader) -> Option<Job> {
@@ -52,13 +71,13 @@ fn job(root: &Section, load: Loader) -> Option<Job> {
                 .remedy("write schema = 1, or use a program of that schema"),
         );
     }
-    for key in ["job", "basis"] {
-        root.need(key, "a table of its own");
+    for (key, table) in [("job", "[job]"), ("basis", "[basis]")] {
+        root.need(key, table);
     }
     let head = head(&root.section("job"));
     let basis = basis(&root.section("basis"), load);
     let sections = root.sections("slab");
-    if !root.has("slab") || sections.is_empty() {
+    if !root.has("slab") {
         root.fault(
             Fault::new("no-slab", root.span.clone(), "the file has no slab")
                 .rule("a job has at least one [[slab]]")
@@ -72,9 +91,9 @@ fn job(root: &Section, load: Loader) -> Option<Job> {
                 .remedy("split the slabs over several drawings"),
         );
     }
-    let letter = basis.as_ref().map_or_else(|| "H".to_string(), |b| b.bar_letter.clone());
+    let letter = bar_letter(&root.section("basis"));
     let aggregate = basis.as_ref().map_or(20.0, |b| b.aggregate.value);
-    let slabs: Vec<Option<Slab>> = sections.iter().take(MOST_SLABS).map(|s| slab::slab(s, &letter, aggregate)).collect();
+    let slabs: Vec<Option<Slab>> = sections.iter().take(MOST_SLABS).map(|s| slab::slab(s, letter, aggregate)).collect();
     let marks: Vec<(&str, &Section)> = slabs.iter().zip(&sections).filter_map(|(s, at)| s.as_ref().map(|s| (s.mark.as_str(), at))).collect();
     for (i, (mark, at)) in marks.iter().enumerate() {
         if marks[..i].iter().any(|(m, _)| m == mark) {
@@ -87,6 +106,19 @@ fn job(root: &Section, load: Loader) -> Option<Job> {
     }
     root.finish();
     Some(Job { head: head?, basis: basis?, slabs: slabs.into_iter().collect::<Option<Vec<_>>>()? })
+}
+
+/// The letter that bars are written with; none where it is itself at fault, so that it is not told again at every bar.
+fn bar_letter(basis: &Section) -> Option<&'static str> {
+    if !basis.has("bar_letter") {
+        return Some("H");
+    }
+    let wrote = basis.peek("bar_letter")?;
+    let steel = basis.peek("steel").and_then(|class| tables().materials.steel.iter().find(|s| s.class == class));
+    if steel.is_some_and(|s| !s.letters.iter().any(|l| l == wrote)) {
+        return None;
+    }
+    tables().materials.letters.iter().map(|l| l.letter.as_str()).find(|l| *l == wrote)
 }
 
 /// A printed text: not empty where required, no control characters, only letters the drawing's font has.
@@ -145,7 +177,7 @@ fn head(section: &Section) -> Option<Head> {
     let date = section.date("date");
     let words: Vec<(&'static str, &'static str)> = [("auto", "auto"), ("A1", "A1"), ("A2", "A2"), ("A3", "A3")].to_vec();
     let sheet = section.choice("sheet", &words).map(|s| s.value).filter(|s| *s != "auto").map(str::to_string);
-    let scale = match section.text_or_number("scale") {
+    let scale = match section.text_or_number("scale", "", 1e6, "auto") {
         Some(Err(n)) if tables().sheets.scales.contains(&(n.value as u32)) && n.value.fract() == 0.0 => Some(n.value as u32),
         Some(Ok(word)) if word.value == "auto" => None,
         None => None,
@@ -249,16 +281,16 @@ fn basis(section: &Section, load: Loader) -> Option<Basis> {
 }
 
 fn fire(section: &Section) -> Option<Option<Fire>> {
-    let Some(text) = section.text("fire", "REI 60") else { return Some(None) };
-    if text.value.is_empty() {
+    let value = printed(section, "fire", false, 20)?;
+    if value.is_empty() {
         return Some(None);
     }
+    let text = At { value, at: None };
     let known = &tables().national.fire;
-    let digits: String = text.value.chars().filter(char::is_ascii_digit).collect();
-    let minutes = digits.parse::<u32>().ok().filter(|m| known.iter().any(|f| f.minutes == *m));
-    let letters: String = text.value.chars().filter(char::is_ascii_alphabetic).collect();
+    let letters: String = text.value.chars().take_while(char::is_ascii_alphabetic).collect();
+    let minutes = text.value[letters.len()..].trim_start().parse::<u32>().ok().filter(|m| known.iter().any(|f| f.minutes == *m));
     match minutes {
-        Some(minutes) if ["R", "RE", "REI"].contains(&letters.as_str()) && text.value.len() <= 10 => Some(Some(Fire { text: text.value, minutes })),
+        Some(minutes) if ["R", "RE", "REI"].contains(&letters.as_str()) => Some(Some(Fire { text: text.value, minutes })),
         _ => {
             section.fault(
                 Fault::new("fire", section.span_of("fire"), format!("fire rating {:?}", text.value.chars().take(30).collect::<String>()))
@@ -282,7 +314,7 @@ fn curtailment_sheet(section: &Section, load: Loader) -> Option<At<curtailment::
     if !name.value.ends_with(".toml") {
         let near = nearest(&name.value, embedded.iter().map(|s| s.name.as_str()));
         section.fault(
-            Fault::new("rule-sheet", span, format!("no rule sheet {:?}", name.value))
+            Fault::new("rule-sheet", span, format!("no rule sheet {:?}", shown(&name.value)))
                 .label(near.map_or(String::new(), |n| format!("did you mean \"{n}\"?")))
                 .rule(format!("`curtailment` is {} or a path that ends with .toml", embedded.iter().map(|s| format!("\"{}\"", s.name)).join(", ")))
                 .remedy("`slabwright list rules` lists the sheets"),
@@ -291,7 +323,7 @@ fn curtailment_sheet(section: &Section, load: Loader) -> Option<At<curtailment::
     }
     let unsound = |why: String| {
         section.fault(
-            Fault::new("rule-sheet", span.clone(), format!("rule sheet {:?}: {why}", name.value))
+            Fault::new("rule-sheet", span.clone(), format!("rule sheet {:?}: {why}", shown(&name.value)))
                 .rule("a rule sheet has the keys of templates/curtailment/one-way-50.toml")
                 .remedy("correct the sheet or its path; the path counts from the job file"),
         );
@@ -311,7 +343,7 @@ fn curtailment_sheet(section: &Section, load: Loader) -> Option<At<curtailment::
 
 fn deduction(section: &Section) -> Option<Deduction> {
     let listed = &tables().deductions;
-    match section.text_or_number("deduction") {
+    match section.text_or_number("deduction", "mm", 200.0, "bs8110-3.24") {
         None if section.has("deduction") => None,
         None => Some(listed[0].clone()),
         Some(Err(number)) => Some(Deduction {
@@ -326,7 +358,7 @@ fn deduction(section: &Section) -> Option<Deduction> {
             let found = listed.iter().find(|d| d.name == name.value).cloned();
             if found.is_none() {
                 section.fault(
-                    Fault::new("deduction", section.span_of("deduction"), format!("no deduction table {:?}", name.value))
+                    Fault::new("deduction", section.span_of("deduction"), format!("no deduction table {:?}", shown(&name.value)))
                         .rule(format!("`deduction` is {} or a number of mm", listed.iter().map(|d| format!("\"{}\"", d.name)).join(", ")))
                         .remedy("write one of these"),
                 );

@@ -8,7 +8,7 @@ use crate::read::Section;
 use crate::tables::tables;
 use itertools::Itertools;
 
-pub(super) fn slab(section: &Section, letter: &str, aggregate: f64) -> Option<Slab> {
+pub(super) fn slab(section: &Section, letter: Option<&str>, aggregate: f64) -> Option<Slab> {
     for (key, example) in [
         ("mark", "\"S1\""),
         ("thickness", "185"),
@@ -151,7 +151,7 @@ fn edges(section: &Section, width: Option<f64>) -> (Option<[Edge; 2]>, Option<[f
     (near.zip(far).map(|(a, b)| [a, b]), near_width.zip(far_width).map(|(a, b)| [a, b]))
 }
 
-fn support(section: &Section, index: usize, is_end: bool, letter: &str, aggregate: f64) -> Option<Support> {
+fn support(section: &Section, index: usize, is_end: bool, letter: Option<&str>, aggregate: f64) -> Option<Support> {
     section.need("kind", "\"wall\"");
     section.need("width", "200");
     let grid = if section.has("grid") { printed(section, "grid", true, 8) } else { Some(default_grid(index)) };
@@ -204,7 +204,7 @@ fn default_grid(index: usize) -> String {
     }
 }
 
-fn span(section: &Section, letter: &str, aggregate: f64) -> Option<Span> {
+fn span(section: &Section, letter: Option<&str>, aggregate: f64) -> Option<Span> {
     section.need("length", "4100");
     section.need("bottom", "\"H12-175\"");
     let length = section.number("length", "mm", 300.0, 20_000.0);
@@ -222,8 +222,9 @@ fn required(section: &Section) -> Option<At<f64>> {
 }
 
 /// Bars at a spacing: letter, size, hyphen, spacing.
-fn bars(section: &Section, key: &'static str, letter: &str, aggregate: f64) -> Option<At<Bars>> {
-    let text = section.text(key, &format!("{letter}12-175"))?;
+fn bars(section: &Section, key: &'static str, letter: Option<&str>, aggregate: f64) -> Option<At<Bars>> {
+    let example = letter.unwrap_or("H");
+    let text = section.text(key, &format!("{example}12-175"))?;
     let span = section.span_of(key);
     let shown: String = text.value.chars().take(30).collect();
     // A basic text without escapes stands one byte after its opening quote.
@@ -233,7 +234,7 @@ fn bars(section: &Section, key: &'static str, letter: &str, aggregate: f64) -> O
             Fault::new("bar-form", at, format!("{key} is {shown:?}"))
                 .label(label)
                 .rule("bars are written letter, size, hyphen, spacing in mm, such as H12-175")
-                .remedy(format!("write it like \"{letter}12-175\"")),
+                .remedy(format!("write it like \"{example}12-175\"")),
         );
     };
     let Some((head, spacing_text)) = text.value.split_once('-') else {
@@ -243,12 +244,14 @@ fn bars(section: &Section, key: &'static str, letter: &str, aggregate: f64) -> O
     let letters: String = head.chars().take_while(|c| !c.is_ascii_digit()).collect();
     let size_text = &head[letters.len()..];
     let (size_at, spacing_at) = (inner(letters.len(), head.len()), inner(head.len() + 1, text.value.len()));
-    let sound = !size_text.is_empty() && size_text.chars().all(|c| c.is_ascii_digit());
+    let plain = |text: &str| !text.is_empty() && text.len() <= 6 && text.chars().all(|c| c.is_ascii_digit()) && !text.starts_with('0');
+    let is_zero = spacing_text == "0";
+    let sound = (plain(size_text) || size_text == "0") && (plain(spacing_text) || is_zero || spacing_text.starts_with('-'));
     let (Some(size), Ok(spacing)) = (sound.then(|| size_text.parse::<u32>().unwrap_or(u32::MAX)), spacing_text.parse::<f64>()) else {
         form("cannot be read", span.clone());
         return None;
     };
-    if letters != letter {
+    if let Some(letter) = letter.filter(|l| *l != letters) {
         section.fault(
             Fault::new("bar-letter", inner(0, letters.len()), format!("{key} is {shown:?}"))
                 .label(format!("the letter of this job is {letter}"))
@@ -308,20 +311,27 @@ fn fits(section: &Section, slab: &Slab, supports: &[Section], spans: &[Section])
                     .remedy("correct the span length or the support widths"),
             );
         }
-        let finest = span.bottom.value.spacing.min(slab.supports[i].top.as_ref().map_or(1000.0, |t| t.value.spacing));
-        if (width - 2.0 * side) / finest > MOST_ACROSS as f64 {
+    }
+    // How many bars of a kind stand side by side, over the width or along the slab.
+    let tops = slab.supports.iter().filter_map(|s| s.top.as_ref()).map(|t| t.value.spacing);
+    let across = slab.spans.iter().map(|s| s.bottom.value.spacing).chain(tops).fold(f64::INFINITY, f64::min);
+    let length: f64 = slab.spans.iter().map(|s| s.length.value).sum();
+    let along = slab.bottom_distribution.value.spacing.min(slab.top_distribution.value.spacing);
+    for (what, key, number) in [("across the width", "width", (width - 2.0 * side) / across), ("along the slab", "bottom_distribution", length / along)] {
+        if number > MOST_ACROSS as f64 {
             section.fault(
-                Fault::new("too-many", section.span_of("width"), "too many bars across the width")
-                    .rule(format!("at most {MOST_ACROSS} bars of a kind across a slab"))
-                    .remedy("split the slab"),
+                Fault::new("too-many", section.span_of(key), format!("about {} bars {what}", number.ceil()))
+                    .rule(format!("at most {MOST_ACROSS} bars of a kind side by side; this is a limit of this program"))
+                    .remedy("split the slab, or look at the spacing"),
             );
         }
     }
     for i in [0, slab.supports.len() - 1] {
         let bearing = slab.supports[i].bearing.value;
         if bearing < side + 20.0 {
+            let key = if supports[i].has("bearing") { "bearing" } else { "width" };
             supports[i].fault(
-                Fault::new("bearing", supports[i].span_of("bearing"), format!("a bearing of {} mm with a side cover of {} mm", mm(bearing), mm(side)))
+                Fault::new("bearing", supports[i].span_of(key), format!("a bearing of {} mm with a side cover of {} mm", mm(bearing), mm(side)))
                     .rule("the bearing is at least the side cover and 20 mm, so that a bar reaches past the face")
                     .remedy("correct the bearing or the cover"),
             );

@@ -64,7 +64,8 @@ fn clear_of_neighbours(work: &Work, k: usize, sets: &[SpanSet]) -> Vec<f64> {
     let mut others = of(&sets[k - 1], true);
     others.extend(sets.get(k + 1).map(|next| of(next, false)).unwrap_or_default());
     let (low, high) = (work.side() + size / 2.0, work.slab.width.value - work.side() - size / 2.0);
-    sets[k].lines.iter().map(|y| lines::clear_of(*y, size, &others, low, high)).collect()
+    let standing = lines::Standing::new(others);
+    sets[k].lines.iter().map(|y| standing.clear(*y, size, low, high)).collect()
 }
 
 fn decide(work: &mut Work, k: usize, ends: &Ends, before: Option<&SpanSet>) -> SpanSet {

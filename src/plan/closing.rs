@@ -59,10 +59,11 @@ pub(super) fn closing_lines(work: &Work, end: &EndPlan, side: usize, bars: &Bars
     let size = f64::from(bars.size);
     let base = lines::across(work.slab.width.value, work.side(), bars.size, bars.spacing);
     let closes = end.own.is_some() || matches!(end.top, TopEnd::Closed { .. });
-    // How low a leg turned down reaches.
+    // How low the top bars reach at this end.
     let foot = match end.top {
         TopEnd::Turned { leg } => work.h() - work.slab.cover.top.value - leg,
-        _ => work.h(),
+        TopEnd::Straight => work.h() - work.slab.cover.top.value - size,
+        TopEnd::Closed { .. } => 0.0,
     };
     let face = face(work, side);
     // A bar between two faces stands back from both by half of its deduction and its rounding.
@@ -73,10 +74,9 @@ pub(super) fn closing_lines(work: &Work, end: &EndPlan, side: usize, bars: &Bars
         (r.layer == Layer::B1 || top) && if side == 0 { low - reach <= face + 1.0 } else { high + reach >= face - 1.0 }
     };
     let own_level = |r: &&Run| closes || r.made.axis.iter().any(|p| r.z + p.1 + r.size() / 2.0 > foot);
-    let others: Vec<(f64, f64)> =
-        work.plan.runs.iter().filter(near).filter(own_level).flat_map(|r| r.lines.iter().map(|y| (*y, r.size())).collect::<Vec<_>>()).collect();
+    let standing = lines::Standing::new(work.plan.runs.iter().filter(near).filter(own_level).flat_map(|r| r.lines.iter().map(|y| (*y, r.size()))));
     let (low, high) = (work.side() + size / 2.0, work.slab.width.value - work.side() - size / 2.0);
-    base.into_iter().map(|y| lines::clear_of(y, size, &others, low, high)).collect()
+    base.into_iter().map(|y| standing.clear(y, size, low, high)).collect()
 }
 
 /// Adds closing bars of their own at the ends that need them.
@@ -152,7 +152,8 @@ pub(super) fn hold(work: &mut Work, ends: &Ends) {
             .collect();
         for low in [true, false] {
             let own: Vec<&(f64, f64, bool)> = corners.iter().filter(|c| c.2 == low).collect();
-            let Some(stands) = own.iter().map(|c| c.0).reduce(f64::max) else { continue };
+            // Inside every upright of this end, whichever bend holds it.
+            let Some(stands) = corners.iter().map(|c| c.0).reduce(f64::max).filter(|_| !own.is_empty()) else { continue };
             let x = face + inward * stands;
             let z = if low {
                 own.iter().map(|c| c.1).fold(work.bottom_seat(x) + d / 2.0, f64::max)

@@ -67,18 +67,7 @@ fn along_span(work: &mut Work, support: usize, side: usize) {
     work.reason(&format!("support:{grid}/corner"), text, rule("D10"));
     // The upright of a U-bar leaves its main leg the deduction lower: the added bar lies at the same level.
     let z = level + (f64::from(size) - f64::from(added)) / 2.0;
-    let others: Vec<(f64, f64)> = all.iter().map(|y| (*y, f64::from(size))).collect();
-    let lines = lines.into_iter().map(|y| lines::clear_of(y, f64::from(added), &others, 0.0, width)).collect_vec();
-    work.plan.runs.push(Run {
-        layer: Layer::T1,
-        role: Role::Corner,
-        along: Along::X,
-        made,
-        lines,
-        z,
-        spacing: step,
-        zone,
-        lap: 0.0,
-        turn: "",
-    });
+    let standing = lines::Standing::new(all.iter().map(|y| (*y, f64::from(size))));
+    let lines = lines.into_iter().map(|y| standing.clear(y, f64::from(added), 0.0, width)).collect_vec();
+    work.plan.runs.push(Run { layer: Layer::T1, role: Role::Corner, along: Along::X, made, lines, z, spacing: step, zone, lap: 0.0, turn: "" });
 }

@@ -1,6 +1,6 @@
 //! D18, second part: bars longer than may be scheduled, cut into pieces that lap.
 
-use super::{Along, Role, Run, Work, lines};
+use super::{Along, Layer, Role, Run, Work, lines};
 use crate::base::{mm, up};
 use crate::rules::anchorage::{self, Bar, Bond};
 use crate::steel::made::{End, Form, between};
@@ -112,12 +112,14 @@ fn stand(work: &mut Work, mut run: Run) {
     let (from, to) = run.made.extent();
     let meets = |r: &&Run| {
         let (low, high) = r.made.extent();
-        r.along == Along::X && r.layer == run.layer && r.role == run.role && low < to - 1.0 && high > from + 1.0
+        // The leg back of a closing bar lies in B1's level.
+        let shares = r.layer == run.layer && r.role == run.role || run.layer == Layer::E && run.made.shape != "00" && r.layer == Layer::B1;
+        r.along == Along::X && shares && low < to - 1.0 && high > from + 1.0
     };
-    let others: Vec<(f64, f64)> = work.plan.runs.iter().filter(meets).flat_map(|r| r.lines.iter().map(|y| (*y, r.size())).collect::<Vec<_>>()).collect();
+    let standing = lines::Standing::new(work.plan.runs.iter().filter(meets).flat_map(|r| r.lines.iter().map(|y| (*y, r.size()))));
     let half = run.size() / 2.0;
     let (low, high) = (work.side() + half, work.slab.width.value - work.side() - half);
-    let lines = run.lines.iter().map(|y| lines::clear_of(*y, run.size(), &others, low, high)).collect();
+    let lines = run.lines.iter().map(|y| standing.clear(*y, run.size(), low, high)).collect();
     run.lines = lines;
     work.plan.runs.push(run);
 }

@@ -75,23 +75,22 @@ fn free(work: &mut Work, side: usize) {
 fn free_lines(work: &Work, side: usize, size: u32, called: &Bars) -> Vec<f64> {
     let d = f64::from(size);
     let reach = 2.0 * work.h();
-    let top = crossing_bars(work, side, &[Layer::T2], reach);
+    let top = lines::Standing::new(crossing_bars(work, side, &[Layer::T2], reach));
     let bottom: Vec<(f64, f64)> = bottom_bars(work, side);
     let (start, end) = (work.stations.start + work.side(), work.stations.end - work.side());
-    let others = crossing_bars(work, side, &[Layer::B2, Layer::T2], reach);
+    let standing = lines::Standing::new(crossing_bars(work, side, &[Layer::B2, Layer::T2], reach));
     let middle = (start + end) / 2.0;
     // Towards the middle of the slab, so that a bar held in a bend at a slab end keeps its edge bar inside it.
     let beside = |(x, s): &(f64, f64)| {
         let touch = if *x <= middle { (s + d) / 2.0 } else { -(s + d) / 2.0 };
-        let worst = |at: f64| top.iter().map(|(o, t)| (at - o).abs() - (t + d) / 2.0).fold(f64::INFINITY, f64::min);
-        if worst(x + touch) >= -crate::base::TOUCH { x + touch } else { x - touch }
+        if top.clear(x + touch, d, start, end) == x + touch { x + touch } else { x - touch }
     };
     let mut fixed: Vec<f64> = bottom.iter().map(beside).sorted_by(f64::total_cmp).collect();
     fixed.dedup_by(|a, b| (*a - *b).abs() < d);
     for (at, first) in [(start + d / 2.0, true), (end - d / 2.0, false)] {
         let nearest = if first { fixed.first() } else { fixed.last() };
         if nearest.is_none_or(|x| (x - at).abs() > called.spacing / 2.0) {
-            let x = lines::clear_of(at, d, &others, start, end);
+            let x = standing.clear(at, d, start, end);
             if first { fixed.insert(0, x) } else { fixed.push(x) }
         }
     }
@@ -99,7 +98,7 @@ fn free_lines(work: &Work, side: usize, size: u32, called: &Bars) -> Vec<f64> {
     for (a, b) in fixed.iter().tuple_windows() {
         lines.push(*a);
         let n = gaps(b - a, called.spacing + d);
-        lines.extend((1..n).map(|i| lines::clear_of(a + (b - a) * i as f64 / n as f64, d, &others, start, end)));
+        lines.extend((1..n).map(|i| standing.clear(a + (b - a) * i as f64 / n as f64, d, start, end)));
     }
     lines.extend(fixed.last());
     lines
@@ -144,11 +143,11 @@ fn held(work: &mut Work, side: usize) {
         let free = if serves { outside_tops(work, span.left_face, span.right_face) } else { vec![(span.left_face, span.right_face)] };
         let reach = up(work.slab.edge_width[side] - work.side() + fraction * span.effective, 5.0);
         let back = up(2.0 * work.h(), 5.0);
-        let others: Vec<(f64, f64)> = crossing_bars(work, side, &[Layer::B2, Layer::T2], reach);
+        let standing = lines::Standing::new(crossing_bars(work, side, &[Layer::B2, Layer::T2], reach));
         let lines: Vec<f64> = free
             .iter()
             .flat_map(|(from, to)| lines::centred(*from, *to, bars.spacing))
-            .map(|x| lines::clear_of(x, f64::from(bars.size), &others, span.left_face, span.right_face))
+            .map(|x| standing.clear(x, f64::from(bars.size), span.left_face, span.right_face))
             .collect();
         let zone = format!("{address}/span:{}", k + 1);
         let steps = vec![
@@ -230,7 +229,8 @@ fn hold(work: &mut Work, side: usize) {
     // They end inside the uprights that close the slab ends.
     let uprights = [0, 1].map(|end| upright_size(work, super::fitting::face(work, end)));
     for z in [bottom, top] {
-        let forms = [Form::Straight(End::Face(super::fitting::face(work, 0) + uprights[0])), Form::Straight(End::Face(super::fitting::face(work, 1) - uprights[1]))];
+        let forms =
+            [Form::Straight(End::Face(super::fitting::face(work, 0) + uprights[0])), Form::Straight(End::Face(super::fitting::face(work, 1) - uprights[1]))];
         let made = between(size, forms[0], forms[1], &work.basis.deduction);
         let spacing = work.slab.bottom_distribution.value.spacing;
         let run = Run { layer: Layer::E, role: Role::Edge, along: Along::X, made, lines: vec![y], z, spacing, zone: zone.clone(), lap: 0.0, turn: "" };

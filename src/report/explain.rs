@@ -36,7 +36,8 @@ pub fn explain(model: &BarModel, source: &str, address: &str) -> Result<Vec<Answ
         wanted.push(address.to_string());
     }
     wanted.extend(known().filter(|a| a.starts_with(&below)).map(str::to_string));
-    if let Some((slab, mark)) = address.split_once("/mark:")
+    // A dimension of a mark is decided in its zones, as the mark is.
+    if let Some((slab, mark)) = address.split_once("/mark:").map(|(slab, rest)| (slab, rest.split('/').next().unwrap_or(rest)))
         && let Some(bar) = model.slabs.iter().filter(|s| s.mark == slab).flat_map(|s| &s.bars).find(|b| b.mark == mark)
     {
         let mut zones: Vec<String> = bar.sets.iter().map(|s| s.zone.clone()).collect();
@@ -53,6 +54,7 @@ pub fn explain(model: &BarModel, source: &str, address: &str) -> Result<Vec<Answ
             .into_iter()
             .chain(known().filter(|a| a.contains(last_part(address))).take(5).map(str::to_string))
             .collect();
+        let near: Vec<String> = itertools::Itertools::unique(near.into_iter()).collect();
         return Err(if near.is_empty() { known().take(8).map(str::to_string).collect() } else { near });
     }
     let mut seen = std::collections::BTreeSet::new();

@@ -81,6 +81,10 @@ impl Sheet {
             ("end_top.reach", self.end_top.reach, 0.05, 0.5),
             ("top.near_face_sizes", self.top.near_face_sizes, 0.0, 100.0),
             ("end_top.least_face_sizes", self.end_top.least_face_sizes, 0.0, 100.0),
+            ("conditions.shortest_over_longest", self.conditions.shortest_over_longest, 0.0, 1.0),
+            ("conditions.variable_over_permanent", self.conditions.variable_over_permanent, 0.0, 100.0),
+            ("conditions.variable_most_kn_m2", self.conditions.variable_most_kn_m2, 0.0, 100.0),
+            ("conditions.redistribution_percent", self.conditions.redistribution_percent, 0.0, 30.0),
         ];
         let mut faults: Vec<String> = ranges
             .iter()

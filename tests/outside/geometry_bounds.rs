@@ -62,7 +62,16 @@ fn right_angles_leave_the_printed_difference_at_every_size() {
 #[test]
 fn formulas_stay_within_the_published_bounds_over_sizes_and_legs() {
     // Shape, least and greatest formula less exact over sizes 8 to 40, mm. 12: radius of the table's rows; 13: B about 2(r + d) + 40.
-    let bounds = [("11", -1.3, 1.2), ("12", 0.1, 0.4), ("13", -1.5, -0.3), ("21", -2.7, 2.3), ("23", -2.7, 2.3), ("31", -4.0, 3.5), ("41", -5.3, 4.7), ("98", -5.3, 4.7)];
+    let bounds = [
+        ("11", -1.3, 1.2),
+        ("12", 0.1, 0.4),
+        ("13", -1.5, -0.3),
+        ("21", -2.7, 2.3),
+        ("23", -2.7, 2.3),
+        ("31", -4.0, 3.5),
+        ("41", -5.3, 4.7),
+        ("98", -5.3, 4.7),
+    ];
     for (code, least, greatest) in bounds {
         let (mut low, mut high) = (f64::INFINITY, f64::NEG_INFINITY);
         for size in SIZES {

@@ -45,7 +45,11 @@ fn compare(quantity: &str, ours: impl Fn(&Row) -> f64) -> usize {
             assert!(
                 (ours / value - 1.0).abs() < 1e-6,
                 "{quantity}, fck {}, size {}, {:?}, sigma {}, {:?}: ours {ours}, {library} {value}",
-                row.fck, row.size, row.bond, row.sigma, row.arg
+                row.fck,
+                row.size,
+                row.bond,
+                row.sigma,
+                row.arg
             );
             compared += 1;
         }

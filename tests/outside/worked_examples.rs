@@ -133,7 +133,13 @@ fn top_steel_at_the_ends_reaches_1200_from_the_face() {
     for bar in slab.bars.iter().filter(|b| b.role == Role::EndTop) {
         for axis in bar.placements() {
             let (low, high) = axis.iter().fold((f64::MAX, f64::MIN), |(l, h), p| (l.min(p[0]), h.max(p[0])));
-            let reach = if low < first { high - first } else if high > last { last - low } else { continue };
+            let reach = if low < first {
+                high - first
+            } else if high > last {
+                last - low
+            } else {
+                continue;
+            };
             ends[usize::from(low >= first)] += 1;
             assert!((reach - 1200.0).abs() < 0.01, "mark {} reaches {reach} from the face", bar.mark);
         }
