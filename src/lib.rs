@@ -10,13 +10,14 @@
 //! - [`issue_set`]: the pipeline in one page; [`cli`]: arguments, terminal, files.
 //!
 //! Below them: [`rules`] (clause functions), [`steel`] (bent bars), [`tables`] (figures of the standards), and the primitives
-//! [`base`], [`trace`], [`diagnose`], [`scene`], [`table`]. A module imports only from floors below its own; a test holds it to that.
+//! [`base`], [`trace`], [`diagnose`], [`finding`], [`scene`], [`table`]. A module imports only from floors below its own; a test holds it to that.
 
 pub mod audit;
 pub mod base;
 pub mod cli;
 pub mod diagnose;
 pub mod draw;
+pub mod finding;
 pub mod issue_set;
 pub mod job;
 pub mod place;

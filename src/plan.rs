@@ -1,5 +1,5 @@
 //! What bars, from where to where, and why: rules D1 to D20. Yields runs of alike bars; knows no mark, no sheet, no file.
-//! Order of work: stations, bottom bars with their ends, top bars, distribution, edges, corners. Each later step sees the earlier runs.
+//! Order of work: stations, bottom bars with their ends, top bars, corners, distribution, edges. Each later step sees the earlier runs.
 
 pub mod bottom;
 pub mod choose;
@@ -247,9 +247,9 @@ fn plan_slab(basis: &Basis, slab: &Slab) -> Plan {
     closing::lap(&mut work, &mut ends, true);
     closing::close(&mut work, &ends);
     closing::hold(&mut work, &ends);
+    corners::plan(&mut work);
     distribution::plan(&mut work);
     edges::plan(&mut work);
-    corners::plan(&mut work);
     let Work { stations, plan: book, .. } = work;
     let mut laps = book.laps;
     laps.sort_by_key(|lap| (lap.0, lap.1 as i64));

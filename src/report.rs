@@ -6,8 +6,8 @@ pub mod model;
 pub mod schedule;
 pub mod steel;
 
-use crate::audit::{Check, KINDS, Verdict};
 use crate::base::num;
+use crate::finding::{Check, KINDS, Verdict};
 use crate::table::Table;
 
 /// How many checks passed, warned and failed.

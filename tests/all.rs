@@ -4,9 +4,11 @@
 
 mod command_line;
 mod faults;
+mod floors;
 mod hostile;
 mod outside;
 mod random_jobs;
+mod rules_hold;
 mod samples;
 mod sheets;
 mod tables_cited;

@@ -112,6 +112,10 @@ fn support(slate: &mut Slate, j: usize) {
         let reach = |p: &&Piece| if left { line - p.low[0] } else { p.high[0] - line };
         let near_limit = (sheet.near * leff).max(sheet.near_face_sizes * size + (line - face).abs());
         let far_limit = sheet.far * leff;
+        // A reach that would pass the slab end ends at its cover, and a little before it for a bar between two faces.
+        let cover = slate.slab.cover.side.value + 45.0;
+        let room = if left { line - stations.start - cover } else { stations.end - line - cover };
+        let (near_limit, far_limit) = (near_limit.min(room), far_limit.min(room));
         let mut reaches: Vec<f64> = over.iter().map(reach).collect();
         reaches.sort_by(f64::total_cmp);
         let name = if left { "left" } else { "right" };

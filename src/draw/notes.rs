@@ -1,7 +1,7 @@
 //! The notes of a sheet, made from the model only: what is not on the job is not said.
 
-use crate::audit::{Check, Verdict};
 use crate::base::{mm, num};
+use crate::finding::{Check, Verdict};
 use crate::job::{Edge, Job, Slab};
 use crate::place::{BarType, SlabModel};
 use crate::plan::{Layer, Role};

@@ -244,7 +244,7 @@ fn bars(section: &Section, key: &'static str, letter: Option<&str>, aggregate: f
     let letters: String = head.chars().take_while(|c| !c.is_ascii_digit()).collect();
     let size_text = &head[letters.len()..];
     let (size_at, spacing_at) = (inner(letters.len(), head.len()), inner(head.len() + 1, text.value.len()));
-    let plain = |text: &str| !text.is_empty() && text.len() <= 6 && text.chars().all(|c| c.is_ascii_digit()) && !text.starts_with('0');
+    let plain = |text: &str| !text.is_empty() && text.len() <= 20 && text.chars().all(|c| c.is_ascii_digit()) && !text.starts_with('0');
     let is_zero = spacing_text == "0";
     let sound = (plain(size_text) || size_text == "0") && (plain(spacing_text) || is_zero || spacing_text.starts_with('-'));
     let (Some(size), Ok(spacing)) = (sound.then(|| size_text.parse::<u32>().unwrap_or(u32::MAX)), spacing_text.parse::<f64>()) else {

@@ -24,7 +24,8 @@ pub fn staggered(from: f64, to: f64, longest: f64, lap: f64) -> Option<Pieces> {
         if long > longest {
             continue;
         }
-        if short < 2.3 * lap {
+        // With two pieces the short one only has to hold its lap; with more, its two laps apart.
+        if short < if count == 2 { 1.1 * lap } else { 2.3 * lap } {
             return None;
         }
         let short = up(short, 25.0);
@@ -81,7 +82,14 @@ pub(super) fn push(work: &mut Work, run: Run, forms: [Form; 2], sizes_aside: f64
         Form::Closed { depth, back, .. } => depth + back,
     });
     let room = longest - bent.fold(0.0, f64::max) - 50.0;
-    let Some(pieces) = staggered(from, to, room, lap.value) else {
+    // What closes both ends is never one bar: where it is too short to stagger its laps, all lap at midspan, over what there is.
+    let middle = || {
+        let half = (lap.value / 2.0).min((to - from) / 2.0 - 20.0);
+        let (one, centre) = ((to - from) / 2.0 + half, (from + to) / 2.0);
+        let pieces = vec![(from, from + one), (centre - half, to)];
+        closes_both.then(|| Pieces { one: pieces.clone(), other: pieces })
+    };
+    let Some(pieces) = staggered(from, to, room, lap.value).or_else(middle) else {
         let zone = run.zone.clone();
         work.plan.reasons.push(super::Reason { address: zone, text: "too short to be cut with laps: left whole".into(), cite: rule("D18") });
         work.plan.runs.push(run);

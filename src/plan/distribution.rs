@@ -37,8 +37,13 @@ fn bottom(work: &mut Work) {
                 ),
                 rule("D19"),
             );
-            let lines = lines::centred(from, to, bars.value.spacing);
-            push(work, Layer::B2, &bars.value, &lines, &format!("support:{grid}/B2"));
+            // From the last bar of one span to the first of the next, no wider than called.
+            let next = &work.stations.spans[k + 1];
+            let beyond = lines::centred(next.left_face, next.right_face, bars.value.spacing);
+            let (first, last) = (lines.last().copied().unwrap_or(from), beyond.first().copied().unwrap_or(to));
+            let n = crate::base::gaps(last - first, bars.value.spacing);
+            let over: Vec<f64> = (1..n).map(|i| first + (last - first) * i as f64 / n as f64).collect();
+            push(work, Layer::B2, &bars.value, &over, &format!("support:{grid}/B2"));
         }
     }
 }
@@ -92,6 +97,14 @@ fn top(work: &mut Work) {
             if (lines[n - 1] - x).abs() < apart {
                 lines[n - 1] = high - up(high - (x - apart), 5.0);
             }
+        }
+        // What moved may now stand close to the next one: that one shares the gap with the one after it.
+        let close = gap + f64::from(bars.value.size);
+        if n > 2 && lines[1] - lines[0] < close {
+            lines[1] = (lines[0] + lines[2]) / 2.0;
+        }
+        if n > 2 && lines[n - 1] - lines[n - 2] < close {
+            lines[n - 2] = (lines[n - 3] + lines[n - 1]) / 2.0;
         }
         let zone = zone.split_once('/').map_or(String::new(), |(_, rest)| rest.replace("/T1", "/T2"));
         let steps = vec![

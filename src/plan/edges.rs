@@ -141,7 +141,9 @@ fn held(work: &mut Work, side: usize) {
         let serves = t2.area() >= need(t2.size) && t2.spacing <= most;
         let needed = need(bars.size);
         let free = if serves { outside_tops(work, span.left_face, span.right_face) } else { vec![(span.left_face, span.right_face)] };
-        let reach = up(work.slab.edge_width[side] - work.side() + fraction * span.effective, 5.0);
+        let across = work.slab.width.value - 2.0 * work.side();
+        let reach = up(work.slab.edge_width[side] - work.side() + fraction * span.effective, 5.0)
+            .min(crate::base::down(across - work.basis.deduction.straight / 2.0, 5.0));
         let back = up(2.0 * work.h(), 5.0);
         let standing = lines::Standing::new(crossing_bars(work, side, &[Layer::B2, Layer::T2], reach));
         let lines: Vec<f64> = free

@@ -63,7 +63,12 @@ impl Ends {
         let face = face(work, side);
         match end.top {
             TopEnd::Straight => Form::Straight(End::Face(face)),
-            TopEnd::Turned { leg } => Form::Turned { face, leg: leg.max(tables().known_bar(size).projection), turn: -1.0 },
+            TopEnd::Turned { leg } => {
+                // A set that was joined may have a larger size, whose leg may not fit.
+                let leg = leg.max(tables().known_bar(size).projection);
+                let fits = leg <= work.upright(work.between_covers());
+                if fits { Form::Turned { face, leg, turn: -1.0 } } else { Form::Straight(End::Face(face)) }
+            }
             TopEnd::Closed { .. } => match closing(work, size) {
                 Some((shape, depth)) => Form::Closed { face, shape, depth, back: end.back, turn: -1.0 },
                 None => Form::Straight(End::Face(face)),

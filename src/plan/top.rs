@@ -133,13 +133,20 @@ fn joined(work: &mut Work, tops: Vec<TopSet>) -> Vec<TopSet> {
 
 /// The sets as they are laid: ends in the bars that bend into the depth, sets joined; the ends then carry their set's bars.
 pub(super) fn join(work: &mut Work, tops: Vec<TopSet>, ends: &mut Ends) -> Vec<TopSet> {
-    let bent = |mut set: TopSet| {
-        for end in ends.0.iter().filter(|e| e.support == set.first) {
+    // Joined by the bars of the design; a set of one support at an end takes those that bend there.
+    let mut sets = tops;
+    loop {
+        let before = sets.len();
+        sets = joined(work, sets);
+        if sets.len() == before {
+            break;
+        }
+    }
+    for set in &mut sets {
+        if let Some(end) = ends.0.iter().find(|e| set.first == set.last && e.support == set.first) {
             set.bars = end.bars.clone();
         }
-        set
-    };
-    let sets = joined(work, tops.into_iter().map(bent).collect());
+    }
     for end in &mut ends.0 {
         let own = sets.iter().find(|set| set.first <= end.support && end.support <= set.last);
         end.bars = own.map_or(end.bars.clone(), |set| set.bars.clone());

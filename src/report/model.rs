@@ -1,7 +1,7 @@
 //! The model as other programs read it: `slabwright/model/1`. Fields may be added, never renamed or dropped.
 
-use crate::audit::Check;
 use crate::base::tidy;
+use crate::finding::Check;
 use crate::job::Job;
 use crate::place::{BarModel, BarType, Set, SlabModel};
 use crate::report::steel;
