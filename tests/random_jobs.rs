@@ -9,6 +9,7 @@ mod generator;
 mod mirror;
 mod model_schema;
 mod small;
+mod written;
 
 use generator::{Draft, draft};
 use slabwright::audit::{Check, Verdict};
@@ -16,7 +17,7 @@ use slabwright::issue_set::{IssueSet, detail};
 use std::sync::LazyLock;
 
 /// How many jobs the properties look at; their seeds run from 0.
-const JOBS: u64 = 110;
+const JOBS: u64 = 100;
 
 struct Drawn {
     seed: u64,
@@ -25,13 +26,18 @@ struct Drawn {
 }
 
 static DRAWN: LazyLock<Vec<Drawn>> = LazyLock::new(|| {
-    (0..JOBS)
-        .map(|seed| {
-            let draft = draft(seed);
-            let set = detailed(&draft.text(None));
-            Drawn { seed, draft, set }
-        })
-        .collect()
+    let drawn = |seed: u64| {
+        let draft = draft(seed);
+        let set = detailed(&draft.text(None));
+        Drawn { seed, draft, set }
+    };
+    let drawn = &drawn;
+    std::thread::scope(|scope| {
+        let parts: Vec<_> = (0..2).map(|half| scope.spawn(move || (0..JOBS).filter(|s| s % 2 == half).map(drawn).collect::<Vec<_>>())).collect();
+        let mut all: Vec<Drawn> = parts.into_iter().flat_map(|p| p.join().unwrap()).collect();
+        all.sort_by_key(|d| d.seed);
+        all
+    })
 });
 
 /// Details a job text that has no faults.

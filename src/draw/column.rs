@@ -104,6 +104,7 @@ pub fn bar_list(paper: &mut Paper, v: &View, model: &SlabModel, area: &Area, top
     let mut at = y + v.note;
     line(paper, at, &heads.map(str::to_string), Weight::Medium, "");
     paper.scene.line(Layer::Text, &[[area.min[0], at + 1.4], [area.min[0] + 92.0, at + 1.4]], Pen::solid(v.pens.thin));
+    at += 0.9;
     for bar in &model.bars {
         at += LIST_ROW;
         let cells = [bar.mark.clone(), bar.type_size(), bar.total().to_string(), bar.length.to_string(), bar.shape.to_string(), bar.layer.name().to_string()];

@@ -82,29 +82,29 @@ fn compare(seeds: std::ops::Range<u64>, merged: bool, wanted: impl Fn(&Draft) ->
 
 #[test]
 fn a_mirrored_slab_of_full_bars_gives_mirrored_bars() {
-    let (compared, broken) = compare(0..100, false, |d| d.slabs[0].arrangement == "full");
-    assert!(compared >= 8, "{compared}");
+    let (compared, broken) = compare(0..70, false, |d| d.slabs[0].arrangement == "full");
+    assert!(compared >= 5, "{compared}");
     assert!(broken.is_empty(), "seeds {broken:?}");
 }
 
 #[test]
 fn a_mirrored_slab_of_alternate_bars_gives_mirrored_bars() {
-    let (compared, broken) = compare(0..100, false, |d| d.slabs[0].arrangement == "alternate");
-    assert!(compared >= 8, "{compared}");
+    let (compared, broken) = compare(0..70, false, |d| d.slabs[0].arrangement == "alternate");
+    assert!(compared >= 5, "{compared}");
     assert!(broken.is_empty(), "seeds {broken:?}");
 }
 
 #[test]
 fn a_mirrored_slab_of_merged_top_bars_gives_mirrored_bars() {
     let (compared, broken) = compare(0..160, true, |d| d.slabs[0].arrangement == "full" || d.slabs[0].arrangement == "alternate");
-    assert!(compared >= 8, "{compared}");
+    assert!(compared >= 5, "{compared}");
     assert!(broken.is_empty(), "seeds {broken:?}");
 }
 
 #[test]
 fn a_mirrored_slab_has_the_same_covers_and_areas() {
     const SAME: &[&str] = &["area-required", "area-most", "rule-spans", "rule-load", "rule-load-ratio", "rule-span-count"];
-    for seed in 0..30 {
+    for seed in 0..15 {
         let draft = even(seed);
         let (one, other) = (detailed(&draft.text(None)), detailed(&mirrored(&draft).text(None)));
         assert_eq!(failed(&one, SAME).len(), failed(&other, SAME).len(), "seed {seed}");
