@@ -56,7 +56,7 @@ fn row(name: &str, source: &[u8], runs: usize) {
     let (model, placed) = timed(runs, || place::place(&job, plan::plan(&job)));
     let (checks, audited) = timed(runs, || audit::audit(&job, &model));
     let (sheets, drawn) = timed(runs, || draw::sheets(&job, &model, &checks));
-    let (pages, schedule) = timed(runs, || draw::schedule(&job, &model));
+    let (pages, schedule) = timed(runs, || draw::schedule(&job, &model, &checks));
     let (_, pdf) = timed(runs, || write::pdf::write(&sheets, (2026, 1, 1), "bench", "bench"));
     let (_, schedule_pdf) = timed(runs, || write::pdf::write(&pages, (2026, 1, 1), "bench", "bench"));
     let (_, svg) = timed(runs, || sheets.iter().map(write::svg::write).map(|s| s.len()).sum::<usize>());

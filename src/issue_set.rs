@@ -45,7 +45,7 @@ impl IssueSet {
             // A mark that is not drawn changes the stamp: draw again with it.
             sheets = draw::sheets(&self.job, &self.model, &self.checks);
         }
-        let schedule = draw::schedule(&self.job, &self.model);
+        let schedule = draw::schedule(&self.job, &self.model, &self.checks);
         let model_json = report::model::json(&self.job, &self.model, &self.checks);
         let head = &self.job.head;
         let title = format!("{} {}, revision {}", head.drawing, head.title, head.revision);

@@ -85,12 +85,12 @@ pub fn close_ups(paper: &mut Paper, v: &View, slab: &Slab, model: &SlabModel, ar
 /// The marks of the slab in a short table: what the sheet shows, as the schedule lists it.
 pub fn bar_list(paper: &mut Paper, v: &View, model: &SlabModel, area: &Area, top: f64) {
     let y = heading(paper, v, area, top, &format!("Marks of slab {}", model.mark));
-    let widths = [14.0, 16.0, 14.0, 20.0, 16.0, 14.0];
-    let heads = ["Mark", "Type", "No.", "Length", "Shape", "Layer"];
+    let widths = [14.0, 16.0, 14.0, 16.0, 20.0, 16.0, 14.0];
+    let heads = ["Mark", "Type", "Each", "Total", "Length", "Shape", "Layer"];
     let line = |paper: &mut Paper, y: f64, cells: &[String], weight: Weight, mark: &str| {
         let mut x = area.min[0];
         for (i, (cell, width)) in cells.iter().zip(widths).enumerate() {
-            let right = matches!(i, 2 | 3);
+            let right = matches!(i, 2..=4);
             let own = Lettering { layer: Layer::Text, mark: mark.into(), height: v.note, weight };
             let spot = if right {
                 Spot { at: [x + width - 5.0, y], anchor: Anchor::End, upward: false }
@@ -103,11 +103,19 @@ pub fn bar_list(paper: &mut Paper, v: &View, model: &SlabModel, area: &Area, top
     };
     let mut at = y + v.note;
     line(paper, at, &heads.map(str::to_string), Weight::Medium, "");
-    paper.scene.line(Layer::Text, &[[area.min[0], at + 1.4], [area.min[0] + 92.0, at + 1.4]], Pen::solid(v.pens.thin));
+    paper.scene.line(Layer::Text, &[[area.min[0], at + 1.4], [area.min[0] + 108.0, at + 1.4]], Pen::solid(v.pens.thin));
     at += 0.9;
     for bar in &model.bars {
         at += LIST_ROW;
-        let cells = [bar.mark.clone(), bar.type_size(), bar.total().to_string(), bar.length.to_string(), bar.shape.to_string(), bar.layer.name().to_string()];
+        let cells = [
+            bar.mark.clone(),
+            bar.type_size(),
+            bar.each().to_string(),
+            bar.total().to_string(),
+            bar.length.to_string(),
+            bar.shape.to_string(),
+            bar.layer.name().to_string(),
+        ];
         line(paper, at, &cells, Weight::Regular, &bar.mark);
     }
 }
@@ -157,9 +165,7 @@ pub fn legend(paper: &mut Paper, v: &View, model: &SlabModel, area: &Area, top: 
     let mut y = heading(paper, v, area, top, "Legend");
     let turns = |word: &str| model.bars.iter().flat_map(|b| &b.sets).any(|s| s.turn == word);
     let closing = model.bars.iter().any(|b| !b.is_straight());
-    let call_out = model.bars.first().map_or("37H12-01-200 B1".to_string(), |b| {
-        format!("{}{}-{}-{} {}", b.each(), b.type_size(), b.mark, crate::base::num(b.sets.first().map_or(0.0, |s| s.spacing), 0), b.layer.name())
-    });
+    let call_out = super::view::Occurrence::of(model).first().map_or(String::new(), super::view::Occurrence::call_out);
     let mut rows: Vec<(u8, String)> = vec![
         (0, format!("{call_out}: number, type and size, mark, spacing, layer")),
         (1, "one bar of a set; the thin line runs over the zone it fills".into()),
@@ -167,15 +173,15 @@ pub fn legend(paper: &mut Paper, v: &View, model: &SlabModel, area: &Area, top: 
         (3, "a bar that the section cuts".into()),
     ];
     if turns("alt") {
-        rows.push((4, "alt: alternate bars of two marks, each at the spacing written".into()));
+        rows.push((4, "alt: alternate bars of two marks, each at the spacing written; first and last bar are the longer".into()));
     }
     if turns("alt rev") {
-        rows.push((4, "alt rev: every second bar turned end for end".into()));
+        rows.push((4, "alt rev: every second bar turned end for end, all at the spacing written".into()));
     }
     if closing {
         rows.push((4, "E: bars of both faces at ends and edges; U-bar: closes the face".into()));
     }
-    rows.push((4, "a mark alone: counted where its number stands".into()));
+    rows.push((4, "(n): number in this zone, where the mark stands in several; a mark alone: its turned bar".into()));
     let thin = Pen::solid(v.pens.thin);
     let x = area.min[0];
     for (symbol, text) in rows {

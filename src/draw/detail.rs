@@ -275,6 +275,7 @@ fn point_at(paper: &mut Paper, v: &View, cut: &Cut, mut points: Vec<(String, [f6
                 Spot { at: [at[0] + 3.0 + step, y], anchor: Anchor::Middle, upward: false }
             });
             let (area, _) = paper.place(&lettering(mark), spots, mark, within);
+            paper.reserve(area.grown(0.9));
             let middle = (area.min[0] + area.max[0]) / 2.0;
             let foot = [middle, if upper { area.max[1] + 0.3 } else { area.min[1] - 0.3 }];
             paper.line(Layer::CallOut, mark, &[*at, foot], Pen::solid(v.pens.thin));

@@ -3,7 +3,7 @@
 use crate::base::{mm, num};
 use crate::finding::{Check, Verdict};
 use crate::job::{Edge, Job, Slab};
-use crate::place::{BarType, SlabModel};
+use crate::place::SlabModel;
 use crate::plan::{Layer, Role};
 use crate::tables::{Sentence, tables};
 use crate::trace::Cite;
@@ -34,8 +34,8 @@ pub fn notes(job: &Job, slab: &Slab, placed: &SlabModel) -> Vec<String> {
     notes.push(note("layers", &[]));
     notes.push(note("spacing", &[]));
     notes.push(laps(job, placed, note));
-    if let Some(height) = chair_height(placed.thickness, &placed.bars) {
-        notes.push(note("chairs", &[("slab", slab.mark.clone()), ("height", mm(height))]));
+    if let Some(heights) = chair_heights(placed) {
+        notes.push(note("chairs", &[("slab", slab.mark.clone()), ("height", heights)]));
     }
     for (edge, side) in slab.edges.iter().zip(["near", "far"]) {
         if *edge == Edge::Joint {
@@ -59,24 +59,32 @@ pub fn notes(job: &Job, slab: &Slab, placed: &SlabModel) -> Vec<String> {
 
 fn laps(job: &Job, placed: &SlabModel, note: impl Fn(&str, &[(&str, String)]) -> String) -> String {
     let laps = placed.laps.iter();
-    let by_size = laps.map(|(size, length)| (*size, *length)).into_grouping_map().max_by(|_, a, b| a.total_cmp(b));
+    let by_size = laps.map(|(size, length)| (*size, *length)).into_grouping_map().min_by(|_, a, b| a.total_cmp(b));
     if by_size.is_empty() {
         return note("no_laps", &[]);
     }
     let letter = &job.basis.bar_letter;
-    let listed = by_size.into_iter().sorted_by_key(|(size, _)| *size).map(|(size, length)| format!("{letter}{size} up to {}", mm(length.ceil()))).join(", ");
+    let listed = by_size.into_iter().sorted_by_key(|(size, _)| *size).map(|(size, length)| format!("{letter}{size} {}", mm(length.floor()))).join(", ");
     note("laps", &[("share", job.basis.lap_share.value.to_string()), ("laps", listed)])
 }
 
-/// Height of chairs: from the top of B2 to the underside of T2, where a slab has both.
-fn chair_height(thickness: f64, bars: &[BarType]) -> Option<f64> {
-    let middle = thickness / 2.0;
+/// Heights of chairs, from the top of B2 to the underside of T2: one, or that at the ends and that over inner supports, where the
+/// deduction of closing bars leaves T2 lower at the ends.
+fn chair_heights(placed: &SlabModel) -> Option<String> {
     let level = |layer: Layer, role: Role| {
-        bars.iter().filter(move |b| b.layer == layer && b.role == role).flat_map(|b| b.sets.iter().map(move |s| (s.axis[0][2], f64::from(b.size) / 2.0)))
+        let own = placed.bars.iter().filter(move |b| b.layer == layer && b.role == role);
+        own.flat_map(|b| b.sets.iter().map(move |s| (s.zone.as_str(), s.axis[0][2], f64::from(b.size) / 2.0)))
     };
-    let bottom = level(Layer::B2, Role::DistributionBottom).map(|(z, half)| z + half).fold(0.0, f64::max);
-    let top = level(Layer::T2, Role::DistributionTop).map(|(z, half)| z - half).fold(f64::INFINITY, f64::min);
-    (bottom > 0.0 && top.is_finite() && top > middle * 0.5 && top > bottom).then(|| crate::base::down(top - bottom, 5.0))
+    let bottom = level(Layer::B2, Role::DistributionBottom).map(|(_, z, half)| z + half).fold(0.0, f64::max);
+    let ends: Vec<String> = [placed.grids.first(), placed.grids.last()].into_iter().flatten().map(|g| format!("/support:{g}/")).collect();
+    let is_end = |zone: &str| ends.iter().any(|e| zone.contains(e.as_str()));
+    let under = |end: bool| level(Layer::T2, Role::DistributionTop).filter(|(zone, _, _)| is_end(zone) == end).map(|(_, z, half)| z - half).reduce(f64::min);
+    let height = |z: f64| mm(crate::base::down(z - bottom, 1.0));
+    match (under(true), under(false)) {
+        (Some(end), Some(inner)) if (end - inner).abs() > 1.0 => Some(format!("{} at the ends, {} over inner supports,", height(end), height(inner))),
+        (Some(z), _) | (None, Some(z)) if z > bottom => Some(format!("{} mm", height(z))),
+        _ => None,
+    }
 }
 
 /// The documents that the figures came from, with their editions.
@@ -90,10 +98,16 @@ pub fn editions(job: &Job) -> String {
 
 /// The stamp over the title block: failed checks first, then preliminary; none where contractual and clean.
 pub fn stamp(job: &Job, checks: &[Vec<Check>]) -> Option<String> {
-    let failed = checks.iter().flatten().filter(|c| c.verdict == Verdict::Fail).count();
+    let failed: Vec<&str> = checks.iter().flatten().filter(|c| c.verdict == Verdict::Fail).map(|c| c.code).collect();
     let stamps = &tables().notes.stamp;
-    if failed > 0 {
-        return stamps.get("failed").map(|s| fill(s, &[("count", failed.to_string())]));
+    if !failed.is_empty() {
+        let count = format!("{} check{}", failed.len(), if failed.len() == 1 { "" } else { "s" });
+        let mut codes: Vec<&str> = failed.iter().copied().unique().collect();
+        if codes.len() > 3 {
+            codes.truncate(3);
+            codes.push("...");
+        }
+        return stamps.get("failed").map(|s| fill(s, &[("count", count), ("codes", codes.join(", "))]));
     }
     job.head.revision.starts_with('P').then(|| stamps.get("preliminary").map(|s| s.text.clone())).flatten()
 }

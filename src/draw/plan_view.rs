@@ -230,8 +230,16 @@ impl PlanView<'_> {
         let set = occurrence.sets.iter().min_by(|a, b| (a.axis[0][0] - station).abs().total_cmp(&(b.axis[0][0] - station).abs()))?;
         let (y_low, y_high) = set.axis.iter().map(|p| p[1]).fold((f64::INFINITY, f64::NEG_INFINITY), |(a, b), y| (a.min(y), b.max(y)));
         for x in if held { vec![first, last] } else { vec![station] } {
-            for piece in pieces_at(occurrence, x) {
-                paper.line(layer, mark, &[[v.x(x), self.y(piece.1)], [v.x(x), self.y(piece.0)]], Pen::solid(width));
+            let pieces = pieces_at(occurrence, x);
+            // Pieces in contact are drawn apart, not to scale, so that the lap can be seen.
+            let drawn: Vec<(f64, (f64, f64))> = pieces.iter().enumerate().map(|(i, p)| (v.x(x) + if i % 2 == 1 { 1.4 } else { 0.0 }, *p)).collect();
+            for (at, piece) in &drawn {
+                paper.line(layer, mark, &[[*at, self.y(piece.1)], [*at, self.y(piece.0)]], Pen::solid(width));
+            }
+            if occurrence.first && (!held || x == first) {
+                for pair in drawn.windows(2) {
+                    self.lap(paper, pair[0].0.max(pair[1].0) + 2.2, pair[1].1.0, pair[0].1.1);
+                }
             }
         }
         let x = v.x(station);
@@ -256,6 +264,25 @@ impl PlanView<'_> {
         let mut spots = along_level(v.x(first), v.x(last), y, v.call_out);
         spots.extend(along_upright(x, self.y(y_high), self.y(y_low), v.call_out, true));
         Some(Waiting { spots, target: [x, y] })
+    }
+
+    /// The lap of two pieces across the slab, dimensioned beside them.
+    fn lap(&self, paper: &mut Paper, x: f64, from: f64, to: f64) {
+        let v = self.view;
+        let (y0, y1) = (self.y(to), self.y(from));
+        paper.line(Layer::Dimension, "", &[[x, y0], [x, y1]], Pen::solid(v.pens.thin));
+        for y in [y0, y1] {
+            tick(paper, Layer::Dimension, "", [x, y], v.pens.thin);
+        }
+        let text = format!("lap {}", num(to - from, 0));
+        let mut spots = vec![Spot { at: [x + v.note + 0.9, (y0 + y1) / 2.0], anchor: Anchor::Middle, upward: true }];
+        spots.extend([2.0, 5.0, 8.0, 12.0].iter().flat_map(|d| [y0 - d, y1 + d]).map(|y| Spot {
+            at: [x + v.note + 0.9, y],
+            anchor: Anchor::Middle,
+            upward: true,
+        }));
+        let within = Area::new([v.x(v.low) - 20.0, self.top - 4.0], [v.x(v.high) + 20.0, self.top + self.height() + 4.0]);
+        paper.place(&figure(v), spots, &text, &within);
     }
 
     fn call_out(&self, paper: &mut Paper, place: Waiting, occurrence: &Occurrence, within: &Area) {
@@ -361,25 +388,39 @@ pub fn upright_dimension(paper: &mut Paper, v: &View, x: f64, y0: f64, y1: f64, 
     paper.text(&lettering, Spot { at: [x - 1.0, (y0 + y1) / 2.0], anchor: Anchor::Middle, upward: true }, text);
 }
 
-/// A level dimension at `y` between two paper stations; the text stands above it, or beside it where it is short.
-pub fn level_dimension(paper: &mut Paper, v: &View, x0: f64, x1: f64, y: f64, text: &str) {
-    let pen = Pen::solid(v.pens.thin);
-    let (x0, x1) = (x0.min(x1), x0.max(x1));
-    paper.line(Layer::Dimension, "", &[[x0, y], [x1, y]], pen);
+/// The line of a level dimension with its terminators.
+pub fn dimension_line(paper: &mut Paper, v: &View, x0: f64, x1: f64, y: f64) {
+    paper.line(Layer::Dimension, "", &[[x0.min(x1), y], [x0.max(x1), y]], Pen::solid(v.pens.thin));
     for x in [x0, x1] {
         tick(paper, Layer::Dimension, "", [x, y], v.pens.thin);
     }
-    let lettering = Lettering { layer: Layer::Dimension, mark: String::new(), height: v.note, weight: Weight::Regular };
+}
+
+fn figure(v: &View) -> Lettering {
+    Lettering { layer: Layer::Dimension, mark: String::new(), height: v.note, weight: Weight::Regular }
+}
+
+/// The figure of a dimension from a grid to a bar end: over its length where it fits, else past the bar end, away from the grid.
+pub fn outward_figure(paper: &mut Paper, v: &View, grid: f64, end: f64, y: f64, text: &str) {
+    let (x0, x1) = (grid.min(end), grid.max(end));
+    let width = crate::tables::font::face(Weight::Regular).width(text, v.note);
+    let over = Spot { at: [(x0 + x1) / 2.0, y - 1.1], anchor: Anchor::Middle, upward: false };
+    let (past, anchor) = if end > grid { (1.0, Anchor::Start) } else { (-1.0, Anchor::End) };
+    let away = [(1.8, v.note / 2.0), (1.8, -1.1), (1.8, v.note + 1.1), (4.0, v.note / 2.0), (8.0, v.note / 2.0), (12.0, v.note / 2.0)];
+    let away = away.map(|(dx, dy)| Spot { at: [end + past * dx, y + dy], anchor, upward: false });
     let within = Area::new([0.0, 0.0], [paper.scene.width, paper.scene.height]);
-    let spots = [
-        Spot { at: [(x0 + x1) / 2.0, y - 1.1], anchor: Anchor::Middle, upward: false },
-        Spot { at: [(x0 + x1) / 2.0, y + v.note + 1.1], anchor: Anchor::Middle, upward: false },
-        Spot { at: [x1 + 1.6, y + v.note / 2.0], anchor: Anchor::Start, upward: false },
-        Spot { at: [x0 - 1.6, y + v.note / 2.0], anchor: Anchor::End, upward: false },
-        Spot { at: [x1 + 1.0, y - 1.1], anchor: Anchor::Start, upward: false },
-        Spot { at: [x0 - 1.0, y - 1.1], anchor: Anchor::End, upward: false },
-        Spot { at: [x1 + 1.0, y + v.note + 1.1], anchor: Anchor::Start, upward: false },
-        Spot { at: [x0 - 1.0, y + v.note + 1.1], anchor: Anchor::End, upward: false },
-    ];
-    paper.place(&lettering, spots, text, &within);
+    let first = (width + 1.0 < x1 - x0).then_some(over);
+    paper.place(&figure(v), first.into_iter().chain(away), text, &within);
+}
+
+/// A level dimension at `y` between two paper stations; the text stands above it, or beside it where it is short.
+pub fn level_dimension(paper: &mut Paper, v: &View, x0: f64, x1: f64, y: f64, text: &str) {
+    let (x0, x1) = (x0.min(x1), x0.max(x1));
+    dimension_line(paper, v, x0, x1, y);
+    let within = Area::new([0.0, 0.0], [paper.scene.width, paper.scene.height]);
+    let middle = (x0 + x1) / 2.0;
+    let beside = [(x1 + 1.6, Anchor::Start), (x0 - 1.6, Anchor::End)]
+        .map(|(x, anchor)| [v.note / 2.0, -1.1, v.note + 1.1].map(|dy| Spot { at: [x, y + dy], anchor, upward: false }));
+    let over = [-1.1, v.note + 1.1].map(|dy| Spot { at: [middle, y + dy], anchor: Anchor::Middle, upward: false });
+    paper.place(&figure(v), over.into_iter().chain(beside.into_iter().flatten()), text, &within);
 }

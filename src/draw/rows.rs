@@ -1,7 +1,7 @@
 //! Bars drawn out: each mark of B1, T1 and the ends at its true station, its ends dimensioned from a grid, its laps dimensioned.
 
 use super::paper::{Area, Lettering, Paper, Spot};
-use super::plan_view::level_dimension;
+use super::plan_view::{dimension_line, level_dimension, outward_figure};
 use super::view::{Occurrence, View};
 use crate::base::mm;
 use crate::place::SlabModel;
@@ -115,29 +115,37 @@ fn bar(paper: &mut Paper, v: &View, occurrence: &Occurrence, y: f64) {
     paper.place(&lettering, spots, &text, &within);
 }
 
-/// Level of the longest level piece.
+/// Level of the main leg: the upper one of a bar that closes the face, else the longest level piece.
 fn main_level(axis: &[[f64; 3]]) -> f64 {
-    let level = axis.windows(2).filter(|w| w[0][2] == w[1][2]);
-    level.max_by(|a, b| (a[0][0] - a[1][0]).abs().total_cmp(&(b[0][0] - b[1][0]).abs())).map_or(0.0, |w| w[0][2])
+    let level = || axis.windows(2).filter(|w| w[0][2] == w[1][2]);
+    let longest = level().max_by(|a, b| (a[0][0] - a[1][0]).abs().total_cmp(&(b[0][0] - b[1][0]).abs())).map_or(0.0, |w| w[0][2]);
+    if level().count() > 1 { level().map(|w| w[0][2]).fold(longest, f64::max) } else { longest }
 }
 
 /// Both ends from the nearest grid.
 fn ends(paper: &mut Paper, v: &View, model: &SlabModel, occurrence: &Occurrence, y: f64) {
-    let (low, high) = occurrence.extent();
+    let Some(set) = occurrence.sets.first() else { return };
+    let main = main_level(&set.axis);
+    let on_main = set.axis.iter().filter(|p| (p[2] - main).abs() < 0.5).map(|p| p[0]);
+    let (low, high) = on_main.fold((f64::INFINITY, f64::NEG_INFINITY), |(a, b), x| (a.min(x), b.max(x)));
     let half = f64::from(occurrence.bar.size) / 2.0;
     // A bent end is dimensioned to its outer face.
     let outer = |station: f64, sign: f64| {
-        let Some(set) = occurrence.sets.first() else { return station };
         let upright = set.axis.windows(2).any(|w| w[0][0] == w[1][0] && w[0][0] == station);
         if upright { station + sign * half } else { station }
     };
-    for station in [outer(low, -1.0), outer(high, 1.0)] {
-        if !v.shows(station) {
-            continue;
-        }
-        let nearest = model.stations.supports.iter().map(|s| s.centre).min_by(|a, b| (a - station).abs().total_cmp(&(b - station).abs()));
-        let Some(grid) = nearest.filter(|g| (g - station).abs() > 0.5) else { continue };
-        level_dimension(paper, v, v.x(grid), v.x(station), y + 5.2, &mm((grid - station).abs()));
+    let grid_of = |station: f64| {
+        let grids = model.stations.supports.iter().map(|s| s.centre);
+        grids.min_by(|a, b| (a - station).abs().total_cmp(&(b - station).abs())).filter(|g| (g - station).abs() > 0.5)
+    };
+    let ends = [outer(low, -1.0), outer(high, 1.0)].into_iter().filter(|x| v.shows(*x)).filter_map(|x| grid_of(x).map(|g| (g, x)));
+    let ends: Vec<(f64, f64)> = ends.collect();
+    // Both lines first: a figure stands over its own length or outside the bar, never over the other length.
+    for (grid, station) in &ends {
+        dimension_line(paper, v, v.x(*grid), v.x(*station), y + 5.2);
+    }
+    for (grid, station) in &ends {
+        outward_figure(paper, v, v.x(*grid), v.x(*station), y + 5.2, &mm((grid - station).abs()));
     }
 }
 

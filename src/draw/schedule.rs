@@ -3,6 +3,7 @@
 use super::notes;
 use super::paper::{Lettering, Paper, Spot, text_area};
 use super::picture;
+use crate::finding::Check;
 use crate::job::Job;
 use crate::place::{BarModel, BarType, SlabModel};
 use crate::report::schedule::{COLUMNS, row};
@@ -29,7 +30,8 @@ fn lettering(height: f64, weight: Weight) -> Lettering {
 }
 
 /// Pages of the schedule, the summary last.
-pub fn schedule(job: &Job, model: &BarModel) -> Vec<Scene> {
+pub fn schedule(job: &Job, model: &BarModel, checks: &[Vec<Check>]) -> Vec<Scene> {
+    let stamp = notes::stamp(job, checks);
     let per_page = ((BODY_END - BODY_TOP) / ROW) as usize;
     let mut pages: Vec<Vec<(&SlabModel, &BarType)>> = Vec::new();
     for slab in &model.slabs {
@@ -51,14 +53,14 @@ pub fn schedule(job: &Job, model: &BarModel) -> Vec<Scene> {
     let summary_rows = 20;
     let summary_pages: Vec<Table> = summary.rows.chunks(summary_rows).map(|rows| Table { columns: summary.columns.clone(), rows: rows.to_vec() }).collect();
     let of = pages.len() + summary_pages.len();
-    let mut scenes: Vec<Scene> = pages.iter().enumerate().map(|(i, rows)| bar_page(job, rows, i + 1, of)).collect();
+    let mut scenes: Vec<Scene> = pages.iter().enumerate().map(|(i, rows)| bar_page(job, stamp.as_deref(), rows, i + 1, of)).collect();
     for (i, table) in summary_pages.iter().enumerate() {
-        scenes.push(mass_page(job, table, pages.len() + i + 1, of));
+        scenes.push(mass_page(job, stamp.as_deref(), table, pages.len() + i + 1, of));
     }
     scenes
 }
 
-fn page(job: &Job, title: &str, number: usize, of: usize) -> Paper {
+fn page(job: &Job, stamp: Option<&str>, title: &str, number: usize, of: usize) -> Paper {
     let mut paper = Paper::new(PAGE[0], PAGE[1]);
     let head = &job.head;
     paper.scene.title = format!("{} bar schedule, revision {}", head.drawing, head.revision);
@@ -66,6 +68,9 @@ fn page(job: &Job, title: &str, number: usize, of: usize) -> Paper {
     paper.scene.rect(Layer::Frame, MIN, MAX, Pen::solid(BOLD));
     let big = lettering(5.0, Weight::Medium);
     paper.text(&big, Spot { at: [MIN[0] + 3.0, MIN[1] + 8.5], anchor: Anchor::Start, upward: false }, title);
+    if let Some(stamp) = stamp {
+        paper.text(&lettering(2.5, Weight::Medium), Spot { at: [MAX[0] - 3.0, MIN[1] + 8.0], anchor: Anchor::End, upward: false }, stamp);
+    }
     let reference = if head.schedule.is_empty() { "none given" } else { &head.schedule };
     let date = head.date_text();
     let fields = [
@@ -110,8 +115,8 @@ fn foot(paper: &mut Paper, job: &Job, number: usize, of: usize) {
     paper.text(&lettering(2.5, Weight::Medium), Spot { at: [MAX[0] - 3.0, MAX[1] - 3.0], anchor: Anchor::End, upward: false }, &sheet);
 }
 
-fn bar_page(job: &Job, rows: &[(&SlabModel, &BarType)], number: usize, of: usize) -> Scene {
-    let mut paper = page(job, "BAR SCHEDULE", number, of);
+fn bar_page(job: &Job, stamp: Option<&str>, rows: &[(&SlabModel, &BarType)], number: usize, of: usize) -> Scene {
+    let mut paper = page(job, stamp, "BAR SCHEDULE", number, of);
     column_heads(&mut paper);
     let mut y = BODY_TOP;
     let mut before: Option<&str> = None;
@@ -168,8 +173,8 @@ fn column_heads(paper: &mut Paper) {
 }
 
 /// The masses, apart from the form.
-fn mass_page(job: &Job, table: &Table, number: usize, of: usize) -> Scene {
-    let mut paper = page(job, "STEEL SUMMARY", number, of);
+fn mass_page(job: &Job, stamp: Option<&str>, table: &Table, number: usize, of: usize) -> Scene {
+    let mut paper = page(job, stamp, "STEEL SUMMARY", number, of);
     let widths = [30.0, 36.0, 22.0, 30.0, 30.0, 30.0, 28.0, 28.0];
     let mut y = HEAD_TOP + 6.5;
     let left = MIN[0] + 4.0;

@@ -163,7 +163,7 @@ fn sheet(job: &Job, slab: &Slab, model: &SlabModel, fit: &Fit, checks: &[Vec<Che
     let levels = level_scale(fit.scale);
     let title = Title {
         size,
-        scales: format!("plans and stations 1:{}, levels 1:{levels}, at {}", fit.scale, size.name),
+        scales: format!("plans and stations 1:{}, levels 1:{levels}, close-ups as titled, at {}", fit.scale, size.name),
         number,
         of,
         document: "Reinforcement drawing",

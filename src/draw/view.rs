@@ -48,6 +48,11 @@ pub struct Occurrence<'a> {
     pub sets: Vec<&'a Set>,
     /// The first place of its mark on the drawing, where the number is written.
     pub first: bool,
+    /// Bars of the mark in this zone, and whether this is the first of its places there (turned bars have two).
+    pub in_zone: u32,
+    pub leads: bool,
+    /// Whether the mark stands in other zones too.
+    pub elsewhere: bool,
 }
 
 impl<'a> Occurrence<'a> {
@@ -62,13 +67,25 @@ impl<'a> Occurrence<'a> {
                     Some(known) if bar.is_along_span() => known.sets.push(set),
                     _ if !bar.is_along_span() => match list[start..].iter_mut().find(|o| o.zone == set.zone) {
                         Some(known) => known.sets.push(set),
-                        None => list.push(Occurrence { bar, zone: &set.zone, sets: vec![set], first: list.len() == start }),
+                        None => list.push(Occurrence::new(bar, set, list.len() == start)),
                     },
-                    _ => list.push(Occurrence { bar, zone: &set.zone, sets: vec![set], first: list.len() == start }),
+                    _ => list.push(Occurrence::new(bar, set, list.len() == start)),
                 }
             }
         }
+        for i in 0..list.len() {
+            let same_mark = |o: &Occurrence| o.bar.mark == list[i].bar.mark;
+            let zone = list[i].zone;
+            let in_zone = list.iter().filter(|o| same_mark(o) && o.zone == zone).map(Occurrence::count).sum();
+            let leads = list.iter().position(|o| same_mark(o) && o.zone == zone) == Some(i);
+            let elsewhere = list.iter().any(|o| same_mark(o) && o.zone != zone);
+            (list[i].in_zone, list[i].leads, list[i].elsewhere) = (in_zone, leads, elsewhere);
+        }
         list
+    }
+
+    fn new(bar: &'a BarType, set: &'a Set, first: bool) -> Occurrence<'a> {
+        Occurrence { bar, zone: &set.zone, sets: vec![set], first, in_zone: 0, leads: true, elsewhere: false }
     }
 
     /// Extent along the span of a bar of this occurrence, mm.
@@ -96,18 +113,23 @@ impl<'a> Occurrence<'a> {
         self.sets.first().map_or("", |s| s.turn)
     }
 
-    /// The call-out: number, type and size, mark, spacing, layer, comment; the mark alone after its first place.
+    /// The call-out: number, type and size, mark, spacing, layer, comment; where the mark stands in several zones the number here in
+    /// brackets. After its first place the number of the mark is not written again: mark, spacing, number here.
     pub fn call_out(&self) -> String {
-        if !self.first {
-            return self.bar.mark.clone();
+        let here = if self.elsewhere { format!(" ({})", self.in_zone) } else { String::new() };
+        let spacing = self.spacing_text();
+        if self.first {
+            let bar = self.bar;
+            return format!("{}{}-{}{spacing} {}{}{here}", bar.each(), bar.type_size(), bar.mark, bar.layer.name(), self.comment());
         }
-        let spacing = self.spacing();
-        let comment = match (self.turn(), self.bar.shape) {
-            ("", "21" | "13") if self.bar.layer == crate::plan::Layer::E => " U-bar",
-            (turn, _) if !turn.is_empty() => return format!("{} {turn}", self.head(spacing)),
-            _ => "",
-        };
-        format!("{}{comment}", self.head(spacing))
+        if self.leads { format!("{}{spacing}{here}", self.bar.mark) } else { self.bar.mark.clone() }
+    }
+
+    fn comment(&self) -> String {
+        let closes = self.bar.layer == crate::plan::Layer::E && !self.bar.is_straight();
+        let beside = if self.zone.contains("/edge:") && !self.zone.contains("/span:") { " U-bar at each B2" } else { " U-bar" };
+        let turn = self.turn();
+        format!("{}{}", if closes { beside } else { "" }, if turn.is_empty() { String::new() } else { format!(" {turn}") })
     }
 
     /// Spacing of the call-out: as called; of alternate bars, that of this mark alone.
@@ -117,11 +139,10 @@ impl<'a> Occurrence<'a> {
         main.map_or(called, |s| s.step[0].abs().max(s.step[1].abs()))
     }
 
-    fn head(&self, spacing: f64) -> String {
-        let bar = self.bar;
-        let held = bar.role == crate::plan::Role::Edge && bar.is_straight();
-        let spacing = if held { String::new() } else { format!("-{}", crate::base::num(spacing, 0)) };
-        format!("{}{}-{}{spacing} {}", bar.each(), bar.type_size(), bar.mark, bar.layer.name())
+    /// The spacing with its hyphen; none for bars held singly inside bends.
+    fn spacing_text(&self) -> String {
+        let held = self.bar.role == crate::plan::Role::Edge && self.bar.is_straight();
+        if held { String::new() } else { format!("-{}", crate::base::num(self.spacing(), 0)) }
     }
 }
 
