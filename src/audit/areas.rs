@@ -92,7 +92,7 @@ fn support(slate: &mut Slate, j: usize) {
     let at = format!("support:{}/T1", slate.model.grids[j]);
     let station = &stations.supports[j];
     let h = slate.h();
-    let top = slate.pieces.along(|p| matches!(p.role, Role::SupportTop | Role::EndTop) && p.low[2] > h / 2.0);
+    let top = slate.pieces.along(|p| matches!(p.role, Role::SupportTop | Role::EndTop) && p.top);
     let top = chained(&top, &centres(&stations));
     let over: Vec<&Piece> = top.iter().filter(|p| p.covers(0, station.centre)).collect();
     let provided = area_at(&over, 0, station.centre, 1);

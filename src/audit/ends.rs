@@ -94,10 +94,9 @@ fn bottom(slate: &mut Slate, support: usize, left: bool) {
 
 /// Lap of the closing bars with the bottom bars that run on: shortest lap, its limit, and their area in mm²/m.
 fn closing_lap(slate: &Slate, running: &[&Piece], left: bool) -> Option<(f64, f64, f64)> {
-    let h = slate.h();
     let (start, end) = (slate.model.stations.start, slate.model.stations.end);
     let near_end = |p: &Piece| if left { p.low[0] < start + 150.0 } else { p.high[0] > end - 150.0 };
-    let legs = slate.pieces.along(|p| p.layer == Layer::E && !p.straight && p.low[2] < h / 2.0 && near_end(p));
+    let legs = slate.pieces.along(|p| p.layer == Layer::E && !p.straight && !p.top && near_end(p));
     let first = legs.first()?;
     let mean = super::pieces::Row::of(legs.iter().copied(), 1).mean();
     let size = first.size.min(running.first()?.size) as u32;
@@ -122,7 +121,7 @@ fn top(slate: &mut Slate, support: usize, left: bool) {
     let face = inner_face(slate, support, left);
     let span = slate.model.stations.spans[k].clone();
     let x = if left { face + 1.0 } else { face - 1.0 };
-    let main = slate.pieces.along(|p| matches!(p.role, Role::EndTop | Role::SupportTop) && p.low[2] > h / 2.0 && p.covers(0, x));
+    let main = slate.pieces.along(|p| matches!(p.role, Role::EndTop | Role::SupportTop) && p.top && p.covers(0, x));
     let sheet = slate.job.basis.curtailment.value.end_top.clone();
     let at = format!("support:{}/T1", slate.model.grids[support]);
     let steel = slate.slab.spans[k].required.as_ref().map_or(slate.slab.spans[k].bottom.value.area(), |r| r.value);
@@ -177,12 +176,12 @@ fn corners(slate: &mut Slate, support: usize, left: bool) {
         let section = |pieces: &[&Piece], across: usize, low: f64, high: f64| -> f64 {
             pieces.iter().filter(|p| p.low[across] >= low && p.low[across] <= high).map(|p| bar_area(p.size as u32)).sum::<f64>() * 1000.0 / (high - low)
         };
-        let along = slate.pieces.along(|p| p.low[2] > h / 2.0 && p.covers(0, x));
+        let along = slate.pieces.along(|p| p.top && p.covers(0, x));
         let level = along.iter().map(|p| p.low[2]).fold(h, f64::min);
         let least = areas::least(slate.job.basis.concrete.value.fck, slate.job.basis.steel.value.fyk, level).value;
         let y = if side == 0 { rests + 1.0 } else { width - rests - 1.0 };
         let (from, to) = if left { (slate.model.stations.start, face + extent) } else { (face - extent, slate.model.stations.end) };
-        let across = slate.pieces.across(|p| p.low[2] > h / 2.0 && p.covers(1, y));
+        let across = slate.pieces.across(|p| p.top && p.covers(1, y));
         let values = [section(&along, 1, low, high), section(&across, 0, from, to)];
         // A window of a few bars counts up to one bar more or less than the spacing gives.
         for (value, name) in values.into_iter().zip(["along", "across"]) {

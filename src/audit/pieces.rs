@@ -20,6 +20,8 @@ pub struct Piece {
     pub axis: usize,
     pub low: Point3,
     pub high: Point3,
+    /// Whether it is top steel: the upper level of a bar that has two, else over mid depth.
+    pub top: bool,
     /// Whether its bar is straight from end to end.
     pub straight: bool,
 }
@@ -57,7 +59,8 @@ impl Pieces {
                 }
                 for axis in set.bars() {
                     for pair in axis.windows(2) {
-                        let piece = piece([kind, bar, zone], mark, pair[0], pair[1]);
+                        let mut piece = piece([kind, bar, zone], mark, pair[0], pair[1]);
+                        piece.top = is_top(&axis, piece.low[2], slab.thickness);
                         by_axis[piece.axis].push(piece);
                     }
                     bar += 1;
@@ -85,7 +88,14 @@ fn piece([kind, bar, zone]: [usize; 3], mark: &BarType, a: Point3, b: Point3) ->
     let axis = (0..3).max_by(|i, j| (a[*i] - b[*i]).abs().total_cmp(&(a[*j] - b[*j]).abs())).unwrap_or(0);
     let low = std::array::from_fn(|i| a[i].min(b[i]));
     let high = std::array::from_fn(|i| a[i].max(b[i]));
-    Piece { bar, kind, zone, layer: mark.layer, role: mark.role, size: f64::from(mark.size), axis, low, high, straight: mark.is_straight() }
+    Piece { bar, kind, zone, layer: mark.layer, role: mark.role, size: f64::from(mark.size), axis, low, high, top: false, straight: mark.is_straight() }
+}
+
+fn is_top(axis: &[Point3], level: f64, thickness: f64) -> bool {
+    let levels: Vec<f64> = axis.windows(2).filter(|w| w[0][2] == w[1][2]).map(|w| w[0][2]).collect();
+    let highest = levels.iter().copied().fold(f64::NEG_INFINITY, f64::max);
+    let lowest = levels.iter().copied().fold(f64::INFINITY, f64::min);
+    if highest - lowest > 1.0 { level >= highest - 1.0 } else { level > thickness / 2.0 }
 }
 
 /// Pieces that lap within a span are one continuous line of steel: each chain of them as one piece. Laps over a support do not chain.

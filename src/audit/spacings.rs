@@ -44,7 +44,7 @@ fn top(slate: &mut Slate, h: f64) {
         if j == 0 || j == last {
             continue;
         }
-        let main = slate.pieces.along(|p| matches!(p.role, Role::SupportTop | Role::EndTop) && p.low[2] > h / 2.0);
+        let main = slate.pieces.along(|p| matches!(p.role, Role::SupportTop | Role::EndTop) && p.top);
         let over: Vec<_> = main.iter().copied().filter(|p| p.covers(0, support.centre)).collect();
         let row = Row::of(over.iter().copied(), 1);
         let size = over.iter().map(|p| p.size).fold(0.0, f64::max);

@@ -150,12 +150,20 @@ fn trial_lap(work: &Work, bars: &Bars) -> f64 {
     anchorage::lap(&lap_bar(work, bars.size, bars.spacing), work.basis.lap_share.value, work.basis.least_lap.value).value
 }
 
+/// Whether the bars of a span that run on will be longer than may be scheduled.
+fn is_cut(work: &Work, k: usize) -> bool {
+    work.stations.spans[k].effective + trial_lap(work, &work.slab.spans[k].bottom.value) > work.basis.longest_bar.value
+}
+
 /// Half of the lap at an inner support, up to 25 mm from the grid, with what it grows by where its bars stand apart (D18).
 fn half_lap(work: &mut Work, j: usize, sets: &[SpanSet]) -> f64 {
     let (left, right) = (&sets[j - 1], &sets[j]);
     let small = left.bars.size.min(right.bars.size);
     let (a, b) = (on_lines(left, true), on_lines(right, false));
     let apart = lines::worst_gap(&a, f64::from(left.bars.size), &b, f64::from(right.bars.size));
+    // Every second piece of a bar that is cut stands aside by two sizes.
+    let aside = [j - 1, j].into_iter().filter(|k| is_cut(work, *k)).map(|k| 2.0 * f64::from(sets[k].bars.size)).fold(0.0, f64::max);
+    let apart = apart + aside;
     let on_spacing = |set: &SpanSet| if set.turn == Turn::Full { set.bars.spacing } else { 2.0 * set.bars.spacing };
     let between = on_spacing(left).min(on_spacing(right)) - f64::from(left.bars.size + right.bars.size);
     let lap = anchorage::lap(&lap_bar(work, small, between), work.basis.lap_share.value, work.basis.least_lap.value);

@@ -89,7 +89,13 @@ pub(super) fn push(work: &mut Work, run: Run, forms: [Form; 2], sizes_aside: f64
         let pieces = vec![(from, from + one), (centre - half, to)];
         closes_both.then(|| Pieces { one: pieces.clone(), other: pieces })
     };
-    let Some(pieces) = staggered(from, to, room, lap.value).or_else(middle) else {
+    // Laps too long to stagger: equal pieces, all lapped at the same sections, so that the bars can still be ordered.
+    let same = || {
+        let pieces = equal(from, to, room, lap.value);
+        let holds = pieces.len() > 1 && pieces[0].1 - pieces[0].0 > 1.1 * lap.value;
+        holds.then(|| Pieces { one: pieces.clone(), other: pieces })
+    };
+    let Some(pieces) = staggered(from, to, room, lap.value).or_else(middle).or_else(same) else {
         let zone = run.zone.clone();
         work.plan.reasons.push(super::Reason { address: zone, text: "too short to be cut with laps: left whole".into(), cite: rule("D18") });
         work.plan.runs.push(run);
