@@ -1,6 +1,6 @@
 //! Every test of the program, in one binary.
 
-#![allow(clippy::unwrap_used, clippy::expect_used, clippy::panic, clippy::print_stderr)]
+#![allow(clippy::unwrap_used, clippy::expect_used, clippy::panic, clippy::print_stderr, clippy::disallowed_methods, clippy::type_complexity)]
 
 mod command_line;
 mod faults;

@@ -149,7 +149,7 @@ fn d13_bars_that_would_be_too_far_apart_or_too_few_all_run_on() {
         let set = made(&format!("{HEAD}{C32}{}{}", slab(thickness, 4000, 25, "auto"), parts.concat()));
         let b1 = bars(&set, "B1");
         let (size, spacing) = if bottom == "H12-225" { (12.0, 225.0) } else { (10.0, 200.0) };
-        let n = ((4000.0 - 50.0 - size) / spacing as f64).ceil() as u32 + 1;
+        let n = f64::ceil((4000.0 - 50.0 - size) / spacing) as u32 + 1;
         assert_eq!(b1.iter().map(|b| b.each()).collect::<Vec<_>>(), [n]);
         let reasons = &set.model.slabs[0].reasons;
         let why = reasons.iter().find(|r| r.address == "S1/span:1/B1" && r.cite.clause == "D13").map(|r| r.text.clone());

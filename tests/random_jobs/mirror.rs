@@ -12,7 +12,7 @@ fn even(seed: u64) -> Draft {
     draft.slabs.truncate(1);
     draft.longest = 12_000;
     let slab = &mut draft.slabs[0];
-    if slab.spans.len() % 2 == 0 {
+    if slab.spans.len().is_multiple_of(2) {
         slab.spans.remove(1);
         slab.supports.remove(1);
     }
