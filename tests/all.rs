@@ -8,6 +8,7 @@ mod floors;
 mod hostile;
 mod outside;
 mod random_jobs;
+mod readme;
 mod rules_hold;
 mod samples;
 mod sheets;

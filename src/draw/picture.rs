@@ -26,11 +26,15 @@ pub fn shape(paper: &mut Paper, bar: &BarType, min: [f64; 2], max: [f64; 2], pen
                 points.push(at);
             }
             Walk::Turn { turn, .. } if *turn == 180.0 => {
-                for _ in 0..6 {
+                for step in 0..6 {
                     heading += 15.0f64.to_radians();
                     at = [at[0] + 0.045 * heading.cos(), at[1] - 0.045 * heading.sin()];
                     heading += 15.0f64.to_radians();
                     points.push(at);
+                    if step == 2 {
+                        // The crown is measured by B: its letter stands beside the middle of the bend.
+                        legs.push(('B', at, std::f64::consts::FRAC_PI_2, 0.0));
+                    }
                 }
             }
             Walk::Turn { turn, .. } => heading += turn.to_radians(),

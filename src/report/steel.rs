@@ -1,6 +1,5 @@
 //! Steel by slab, layer, size and class, with laps apart; and what a quantity surveyor asks besides.
 
-use crate::base::num;
 use crate::place::{BarModel, BarType, SlabModel};
 use crate::plan::Layer;
 use crate::steel::mass;
@@ -99,9 +98,10 @@ pub fn summary(model: &BarModel) -> Table {
 
 /// A row of the summary; `concrete` is plan area and volume, m² and m³, for the rates.
 fn summary_row(group: &str, name: String, sum: &Sum, concrete: Option<(f64, f64)>) -> [String; 8] {
-    let rate = |of: f64| if of > 0.0 { num(sum.kg / of, 1) } else { String::new() };
+    let rate = |of: f64| if of > 0.0 { format!("{:.1}", sum.kg / of) } else { String::new() };
     let (area, volume) = concrete.map_or((String::new(), String::new()), |(a, v)| (rate(a), rate(v)));
-    [group.to_string(), name, sum.bars.to_string(), num(sum.length_m, 1), num(sum.kg, 1), num(sum.laps_kg, 1), area, volume]
+    let tenth = |value: f64| format!("{value:.1}");
+    [group.to_string(), name, sum.bars.to_string(), tenth(sum.length_m), tenth(sum.kg), tenth(sum.laps_kg), area, volume]
 }
 
 /// Layers in laying order that a slab has.
