@@ -279,7 +279,7 @@ fn decide_top(work: &mut Work, support: usize, bars: &mut Bars, bottom_needs_clo
 }
 
 /// Closing bars of their own, of the area that runs on.
-fn own_closing(work: &mut Work, grid: &str, on: &Bars) -> Option<Bars> {
+pub(super) fn own_closing(work: &mut Work, grid: &str, on: &Bars) -> Option<Bars> {
     let size = std::iter::once(on.size).chain(choose::smaller(on.size)).find(|s| closing(work, *s).is_some())?;
     let bars = if size == on.size { on.clone() } else { choose::equal_area(on, size) };
     work.reason(&format!("support:{grid}/B1"), format!("closing bars {} lap B1", bars.text(&work.basis.bar_letter)), rule("D7"));

@@ -1,6 +1,6 @@
 //! T1: reaches over supports (D11), sets that run together in short spans (D14a), turns (D13, D14).
 
-use super::ends::Ends;
+use super::ends::{self, BottomEnd, EndPlan, Ends, TopEnd};
 use super::pattern::{self, Turn};
 use super::{Along, Layer, Role, Run, TopSet, Work, cut, lines};
 use crate::base::{mm, up};
@@ -150,6 +150,14 @@ pub(super) fn join(work: &mut Work, tops: Vec<TopSet>, ends: &mut Ends) -> Vec<T
     for end in &mut ends.0 {
         let own = sets.iter().find(|set| set.first <= end.support && end.support <= set.last);
         end.bars = own.map_or(end.bars.clone(), |set| set.bars.clone());
+        // A set that took a larger size may no longer close an end that B1 needs closed.
+        let closes = super::fitting::closing(work, end.bars.size).is_some();
+        if end.bottom == BottomEnd::Closed && matches!(end.top, TopEnd::Closed { .. }) && !closes {
+            let grid = work.slab.supports[end.support].grid.clone();
+            let on = pattern::running_on(work, if end.support == 0 { 0 } else { end.support - 1 });
+            end.top = TopEnd::Straight;
+            end.own = ends::own_closing(work, &grid, &on);
+        }
     }
     sets
 }
@@ -223,9 +231,10 @@ fn plan_set(work: &mut Work, set: &TopSet, ends: &Ends) {
 
 /// Lines of a set across the width; a set that ends at a slab end keeps off the bottom bars there.
 fn set_lines(work: &Work, set: &TopSet, ends: &Ends) -> Vec<f64> {
-    let at_end = ends.0.iter().enumerate().find(|(_, e)| e.own.is_none() && (e.support == set.first || e.support == set.last));
+    let at_end = ends.0.iter().enumerate().find(|(_, e)| e.support == set.first || e.support == set.last);
     match at_end {
-        Some((side, end)) => super::closing::closing_lines(work, end, side, &set.bars),
+        // Closing bars of their own come later and keep clear of these.
+        Some((side, end)) => super::closing::closing_lines(work, &EndPlan { own: None, ..end.clone() }, side, &set.bars),
         None => lines::across(work.slab.width.value, work.side(), set.bars.size, set.bars.spacing),
     }
 }
