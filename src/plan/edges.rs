@@ -31,8 +31,9 @@ fn face(work: &Work, side: usize) -> f64 {
 /// Upright of an edge bar: from the underside of the B2 level to the top of the T2 level, less the deduction.
 fn depth(work: &Work) -> f64 {
     let outer = work.plan.runs.iter().filter(|r| r.along == Along::X && (r.layer == Layer::B1 || r.layer == Layer::E && r.made.shape != "00"));
+    let closing = work.plan.runs.iter().filter(|r| r.along == Along::X && r.layer == Layer::E && r.made.shape != "00").map(Run::size).fold(0.0, f64::max);
     let bottom = outer.map(Run::size).fold(0.0, f64::max);
-    work.upright(work.between_covers() - bottom - work.largest_top())
+    work.upright(work.between_covers() - bottom - work.largest_top().max(closing))
 }
 
 /// Lines and sizes of the bars across the slab that come within `reach` of this side edge, in these layers; bars held at the
@@ -230,7 +231,16 @@ fn hold(work: &mut Work, side: usize) {
     let top = held.iter().filter(|z| **z >= middle && over(top, **z)).map(|z| z - d).fold(top, f64::min);
     // They end inside the uprights that close the slab ends.
     let uprights = [0, 1].map(|end| upright_size(work, super::fitting::face(work, end)));
-    for z in [bottom, top] {
+    // A bend too shallow for two bars holds one.
+    let levels = if top - bottom < d { vec![(bottom + top) / 2.0] } else { vec![bottom, top] };
+    if levels.len() == 1 {
+        work.reason(
+            &format!("edge:{}", NAMES[side]),
+            format!("the bends leave {} mm between two bars of size {size}: one is held", mm(top - bottom)),
+            rule("D9"),
+        );
+    }
+    for z in levels {
         let forms =
             [Form::Straight(End::Face(super::fitting::face(work, 0) + uprights[0])), Form::Straight(End::Face(super::fitting::face(work, 1) - uprights[1]))];
         let made = between(size, forms[0], forms[1], &work.basis.deduction);
