@@ -302,7 +302,24 @@ impl PlanView<'_> {
         let mut away = Vec::new();
         for ring in 1..=30 {
             let reach = 4.0 + 3.0 * f64::from(ring);
-            for (dx, dy) in [(1.0, -0.6), (-1.0, -0.6), (1.0, 0.6), (-1.0, 0.6), (0.4, -1.0), (-0.4, -1.0), (0.4, 1.0), (-0.4, 1.0)] {
+            for (dx, dy) in [
+                (1.0, -0.6),
+                (-1.0, -0.6),
+                (1.0, 0.6),
+                (-1.0, 0.6),
+                (0.4, -1.0),
+                (-0.4, -1.0),
+                (0.4, 1.0),
+                (-0.4, 1.0),
+                (0.15, -1.0),
+                (-0.15, -1.0),
+                (0.15, 1.0),
+                (-0.15, 1.0),
+                (0.25, -0.5),
+                (-0.25, -0.5),
+                (0.25, 0.5),
+                (-0.25, 0.5),
+            ] {
                 let at = [target[0] + dx * reach, target[1] + dy * reach];
                 away.push(Spot { at, anchor: if dx > 0.0 { Anchor::Start } else { Anchor::End }, upward: false });
                 away.push(Spot { at, anchor: if dy > 0.0 { Anchor::End } else { Anchor::Start }, upward: true });

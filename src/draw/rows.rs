@@ -111,7 +111,11 @@ fn bar(paper: &mut Paper, v: &View, occurrence: &Occurrence, y: f64) {
     let lettering = Lettering { layer: Layer::CallOut, mark: mark.into(), height: v.note, weight: Weight::Medium };
     let text = format!("{}  L {}", occurrence.bar.mark, occurrence.bar.length);
     let within = Area::new([0.0, 0.0], [paper.scene.width, paper.scene.height]);
-    let spots = [0.5, 0.4, 0.6, 0.3, 0.7, 0.2, 0.8].map(|s| Spot { at: [v.x(from + s * (to - from)), y - 1.4], anchor: Anchor::Middle, upward: false });
+    let spots = [0.5, 0.4, 0.6, 0.3, 0.7, 0.2, 0.8, 0.1, 0.9, 0.0, 1.0].map(|s| Spot {
+        at: [v.x(from + s * (to - from)), y - 2.2],
+        anchor: Anchor::Middle,
+        upward: false,
+    });
     paper.place(&lettering, spots, &text, &within);
 }
 
