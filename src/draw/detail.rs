@@ -55,7 +55,7 @@ impl Cut<'_> {
             if bar.is_along_span() == (self.axis == 0) {
                 points.extend(self.in_plane(paper, v, bar));
             } else {
-                points.extend(self.cut(paper, v, bar));
+                points.extend(self.cut(paper, bar));
             }
         }
         points
@@ -190,7 +190,7 @@ impl Cut<'_> {
     }
 
     /// Bars that the cut goes through, as dots.
-    fn cut(&self, paper: &mut Paper, v: &View, bar: &BarType) -> Vec<(String, [f64; 2])> {
+    fn cut(&self, paper: &mut Paper, bar: &BarType) -> Vec<(String, [f64; 2])> {
         let across = 1 - self.axis;
         let mut points: Vec<(String, [f64; 2])> = Vec::new();
         for set in &bar.sets {
@@ -211,7 +211,6 @@ impl Cut<'_> {
                 }
             }
         }
-        let _ = v;
         let middle = points.len() / 2;
         points.into_iter().skip(middle).take(1).collect()
     }
