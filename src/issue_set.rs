@@ -73,6 +73,8 @@ impl IssueSet {
         let drawn = drawn_numbers(sheets);
         let mut missing = false;
         for (slab, checks) in self.model.slabs.iter().zip(&mut self.checks) {
+            // The documents may be asked for more than once.
+            checks.retain(|c| c.code != "sheet-marks");
             for bar in &slab.bars {
                 let number = drawn.get(&bar.mark).copied().unwrap_or(0);
                 let verdict = if number == bar.each() { Verdict::Pass } else { Verdict::Fail };

@@ -81,7 +81,6 @@ pub enum Shape {
     },
     Fill {
         points: Vec<[f64; 2]>,
-        white: bool,
     },
     /// Text on its base line; `height` is the height of its capitals, `upward` turns it to read from the right.
     Text {
@@ -129,13 +128,5 @@ impl Scene {
     pub fn rect(&mut self, layer: Layer, min: [f64; 2], max: [f64; 2], pen: Pen) {
         let points = vec![min, [max[0], min[1]], max, [min[0], max[1]]];
         self.push(layer, "", Shape::Line { points, closed: true, pen });
-    }
-
-    pub fn text(&mut self, layer: Layer, at: [f64; 2], height: f64, anchor: Anchor, text: impl Into<String>) {
-        self.push(layer, "", Shape::Text { at, height, text: text.into(), anchor, weight: Weight::Regular, upward: false });
-    }
-
-    pub fn heading(&mut self, layer: Layer, at: [f64; 2], height: f64, anchor: Anchor, text: impl Into<String>) {
-        self.push(layer, "", Shape::Text { at, height, text: text.into(), anchor, weight: Weight::Medium, upward: false });
     }
 }

@@ -342,7 +342,7 @@ fn scale_bar(paper: &mut Paper, v: &View, x: f64, y: f64) {
         let (a, b) = (x + f64::from(i) * step / v.scale, x + f64::from(i + 1) * step / v.scale);
         paper.scene.rect(Layer::Text, [a, y], [b, y + 1.6], pen);
         if i % 2 == 0 {
-            paper.scene.push(Layer::Text, "", crate::scene::Shape::Fill { points: vec![[a, y], [b, y], [b, y + 1.6], [a, y + 1.6]], white: false });
+            paper.scene.push(Layer::Text, "", crate::scene::Shape::Fill { points: vec![[a, y], [b, y], [b, y + 1.6], [a, y + 1.6]] });
         }
     }
     for i in [0, 5] {

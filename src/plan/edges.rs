@@ -69,7 +69,7 @@ fn free(work: &mut Work, side: usize) {
             .cited(rule("D9, D19")),
     ];
     work.explain(&format!("{address}/count"), steps);
-    push(work, side, size, [leg, depth, leg], shape, &lines, called.spacing, Role::Edge, &address);
+    push(work, side, size, [leg, depth, leg], shape, &lines, called.spacing, &address);
 }
 
 /// In contact beside each B2 bar, on the side where no T2 bar stands; between those and to the slab ends at the B2 spacing.
@@ -173,7 +173,7 @@ fn held(work: &mut Work, side: usize) {
                 .cited(rule("D9, D19")),
         ];
         work.explain(&format!("{zone}/count"), steps);
-        push(work, side, bars.size, [reach, depth, back], shape, &lines, bars.spacing, Role::Edge, &zone);
+        push(work, side, bars.size, [reach, depth, back], shape, &lines, bars.spacing, &zone);
     }
 }
 
@@ -189,7 +189,7 @@ fn outside_tops(work: &Work, from: f64, to: f64) -> Vec<(f64, f64)> {
 
 /// U-bars across a side edge: bottom leg in the B2 level, main leg above it. Grouped by the level they rest at.
 #[allow(clippy::too_many_arguments)]
-fn push(work: &mut Work, side: usize, size: u32, legs: [f64; 3], shape: &'static str, lines: &[f64], spacing: f64, role: Role, zone: &str) {
+fn push(work: &mut Work, side: usize, size: u32, legs: [f64; 3], shape: &'static str, lines: &[f64], spacing: f64, zone: &str) {
     let face = face(work, side);
     let inward = if side == 0 { 1.0 } else { -1.0 };
     let closed = Form::Closed { face, shape, depth: legs[1], back: legs[2], turn: -1.0 };
@@ -208,7 +208,18 @@ fn push(work: &mut Work, side: usize, size: u32, legs: [f64; 3], shape: &'static
         .collect();
     for (seat, lines) in groups {
         let z = seat + legs[1] - f64::from(size) / 2.0;
-        work.plan.runs.push(Run { layer: Layer::E, role, along: Along::Y, made: made.clone(), lines, z, spacing, zone: zone.clone(), lap: 0.0, turn: "" });
+        work.plan.runs.push(Run {
+            layer: Layer::E,
+            role: Role::Edge,
+            along: Along::Y,
+            made: made.clone(),
+            lines,
+            z,
+            spacing,
+            zone: zone.clone(),
+            lap: 0.0,
+            turn: "",
+        });
     }
 }
 

@@ -1,7 +1,6 @@
 //! Steel by slab, layer, size and class, with laps apart; and what a quantity surveyor asks besides.
 
 use crate::place::{BarModel, BarType, SlabModel};
-use crate::plan::Layer;
 use crate::steel::mass;
 use crate::table::Table;
 use std::collections::BTreeMap;
@@ -102,10 +101,4 @@ fn summary_row(group: &str, name: String, sum: &Sum, concrete: Option<(f64, f64)
     let (area, volume) = concrete.map_or((String::new(), String::new()), |(a, v)| (rate(a), rate(v)));
     let tenth = |value: f64| format!("{value:.1}");
     [group.to_string(), name, sum.bars.to_string(), tenth(sum.length_m), tenth(sum.kg), tenth(sum.laps_kg), area, volume]
-}
-
-/// Layers in laying order that a slab has.
-pub fn layers(slab: &SlabModel) -> Vec<Layer> {
-    let order = [Layer::B1, Layer::B2, Layer::E, Layer::T2, Layer::T1];
-    order.into_iter().filter(|l| slab.bars.iter().any(|b| b.layer == *l)).collect()
 }

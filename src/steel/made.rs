@@ -62,18 +62,6 @@ impl Made {
         self.why.insert(letter, steps);
         self
     }
-
-    /// The conditions of its shape that this bar misses, as text.
-    pub fn misses(&self) -> Vec<String> {
-        let dims: Dims = self.dims.iter().map(|(l, v)| (*l, f64::from(*v))).collect();
-        match Bent::new(self.shape, self.size, dims) {
-            Ok(bent) => {
-                let miss = |m: crate::steel::bend::Met| format!("{}: {} is under {}", m.text, mm(m.value), mm(m.limit));
-                bent.misses().into_iter().map(miss).collect()
-            }
-            Err(fault) => vec![fault.to_string()],
-        }
-    }
 }
 
 /// A straight bar between two ends (D16, D17).

@@ -134,16 +134,7 @@ fn draw(ops: &mut Vec<Op>, shape: &Shape, ink: &mut Ink) {
             set_pen(ops, *pen, ink);
             ops.push(Op::DrawLine { line: Line { points: straight(points, ink), is_closed: *closed } });
         }
-        Shape::Fill { points, white } => {
-            let grey = |percent: f32| Color::Greyscale(Greyscale { percent, icc_profile: None });
-            if *white {
-                ops.push(Op::SetFillColor { col: grey(1.0) });
-            }
-            ops.push(filled(straight(points, ink)));
-            if *white {
-                ops.push(Op::SetFillColor { col: grey(0.0) });
-            }
-        }
+        Shape::Fill { points } => ops.push(filled(straight(points, ink))),
         Shape::Circle { centre, radius, pen, filled: is_filled } => {
             let ring = circle(*centre, *radius, ink);
             if *is_filled {

@@ -50,7 +50,7 @@ fn style(scene: &Scene) -> String {
         }
     }
     css.push_str(&format!("text{{font-family:'{FAMILY}','Arial Narrow',sans-serif;font-weight:400;fill:#000}}\n.m{{font-weight:500}}\n"));
-    css.push_str("path,circle{fill:none;stroke:#000;stroke-linecap:butt;stroke-linejoin:miter}\n.f{fill:#000;stroke:none}\n.w{fill:#fff;stroke:none}");
+    css.push_str("path,circle{fill:none;stroke:#000;stroke-linecap:butt;stroke-linejoin:miter}\n.f{fill:#000;stroke:none}");
     css
 }
 
@@ -82,10 +82,6 @@ fn layer_group(scene: &Scene, layer: Layer) -> Option<Element> {
 }
 
 fn draw(group: &mut Element, shapes: &[&Shape]) {
-    // White grounds lie under everything of their layer.
-    for shape in shapes.iter().filter(|s| matches!(s, Shape::Fill { white: true, .. })) {
-        group.append(element(shape));
-    }
     // Lines of one pen are one path.
     let mut paths: BTreeMap<(u64, u8), (Pen, String)> = BTreeMap::new();
     for shape in shapes {
@@ -100,7 +96,7 @@ fn draw(group: &mut Element, shapes: &[&Shape]) {
         stroke(&mut path, pen);
         group.append(path);
     }
-    for shape in shapes.iter().filter(|s| !matches!(s, Shape::Line { .. } | Shape::Fill { white: true, .. })) {
+    for shape in shapes.iter().filter(|s| !matches!(s, Shape::Line { .. })) {
         group.append(element(shape));
     }
 }
@@ -141,10 +137,10 @@ fn element(shape: &Shape) -> Element {
             stroke(&mut element, *pen);
             element
         }
-        Shape::Fill { points, white } => {
+        Shape::Fill { points } => {
             let mut element = Element::new("path");
             element.assign("d", path(points, true));
-            element.assign("class", if *white { "w" } else { "f" });
+            element.assign("class", "f");
             element
         }
         Shape::Circle { centre, radius, pen, filled } => {
