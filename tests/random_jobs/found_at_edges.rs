@@ -1,16 +1,6 @@
 //! Faults of the planner at slab ends, edges and corners that random jobs showed, each reduced to its smallest job.
 
-use super::generator::Draft;
-use super::small::{H12_200, small};
-use super::{detailed, failed};
-
-fn assert_passes(draft: &Draft, codes: &[&str]) {
-    let text = draft.text(None);
-    let open = failed(&detailed(&text), codes);
-    assert!(open.is_empty(), "{open:#?}\n{text}");
-}
-
-const SHORT: (u32, (u32, u32)) = (1500, H12_200);
+use super::small::{H12_200, SHORT, assert_passes, small};
 
 #[test]
 fn edge_bars_stand_inside_bent_up_bottom_bars() {

@@ -1,14 +1,6 @@
 //! Sound bars that the second opinion fails, each reduced to its smallest job. A test loses its `ignore` with the mend.
 
-use super::generator::Draft;
-use super::small::{H12_200, small};
-use super::{detailed, failed};
-
-fn assert_passes(draft: &Draft, codes: &[&str]) {
-    let text = draft.text(None);
-    let open = failed(&detailed(&text), codes);
-    assert!(open.is_empty(), "{open:#?}\n{text}");
-}
+use super::small::{H12_200, assert_passes, small};
 
 #[test]
 fn a_cut_bottom_bar_runs_on_and_stops_where_its_outer_pieces_do() {

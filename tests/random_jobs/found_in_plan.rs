@@ -1,16 +1,8 @@
 //! Faults of the planner that random jobs showed, each reduced to its smallest job. A test loses its `ignore` with the mend.
 
+use super::detailed;
 use super::generator::Draft;
-use super::small::{H12_200, small};
-use super::{detailed, failed};
-
-fn assert_passes(draft: &Draft, codes: &[&str]) {
-    let text = draft.text(None);
-    let open = failed(&detailed(&text), codes);
-    assert!(open.is_empty(), "{open:#?}\n{text}");
-}
-
-const SHORT: (u32, (u32, u32)) = (1500, H12_200);
+use super::small::{H12_200, SHORT, assert_passes, small};
 
 #[test]
 fn merged_top_bars_bend_inside_the_slab_end() {

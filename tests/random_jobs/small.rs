@@ -1,8 +1,17 @@
 //! Small invented jobs, built up from one plain slab, for faults that a random job showed.
 
 use super::generator::{Bars, Bay, Draft, Panel, Rest};
+use super::{detailed, failed};
 
 pub const H12_200: Bars = (12, 200);
+pub const SHORT: (u32, Bars) = (1500, H12_200);
+
+/// A job fails none of these checks.
+pub fn assert_passes(draft: &Draft, codes: &[&str]) {
+    let text = draft.text(None);
+    let open = failed(&detailed(&text), codes);
+    assert!(open.is_empty(), "{open:#?}\n{text}");
+}
 
 /// One slab 2 m wide between joints, on walls of 200 mm with H12-200 over each, all covers 25 mm.
 pub fn small(thickness: u32, spans: &[(u32, Bars)]) -> Draft {
