@@ -1,5 +1,7 @@
 //! Drawing primitives in mm on paper, y down from the top left corner of the sheet. A scene is finished: writers only copy it.
 
+use std::collections::BTreeMap;
+
 /// Who draws a line: decides width, and the layer a viewer can switch.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, PartialOrd, Ord, Hash)]
 pub enum Layer {
@@ -60,12 +62,6 @@ pub enum Anchor {
     End,
 }
 
-#[derive(Clone, Copy, Debug, PartialEq, Eq)]
-pub enum Weight {
-    Regular,
-    Medium,
-}
-
 #[derive(Clone, Debug)]
 pub enum Shape {
     Line {
@@ -88,7 +84,6 @@ pub enum Shape {
         height: f64,
         text: String,
         anchor: Anchor,
-        weight: Weight,
         upward: bool,
     },
 }
@@ -113,6 +108,8 @@ pub struct Scene {
     pub width: f64,
     pub height: f64,
     pub bookmarks: Vec<Bookmark>,
+    /// Role of each mark's bars, such as `span-bottom`.
+    pub roles: BTreeMap<String, String>,
     pub items: Vec<Item>,
 }
 

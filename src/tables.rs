@@ -287,20 +287,25 @@ pub struct Sheets {
     pub frame_pen: f64,
     pub scales: Vec<u32>,
     pub source: String,
-    pub text: TextHeights,
+    /// Every text height a sheet may use: the series of ISO 3098, mm.
+    pub heights: Vec<f64>,
+    /// Every line width a sheet may use: the series of ISO 128, mm.
+    pub widths: Vec<f64>,
+    /// What a sheet printed at half size may not go under: text height and line width, mm.
+    pub half_size: [f64; 2],
     #[serde(rename = "size")]
     pub sizes: Vec<SheetSize>,
 }
 
-/// Heights of capitals, mm.
-#[derive(Debug, Deserialize)]
+/// Heights of capitals, mm: labels of the title block, notes and dimensions, call-outs, view titles, the drawing number.
+#[derive(Clone, Copy, Debug, Deserialize)]
 #[serde(deny_unknown_fields)]
 pub struct TextHeights {
+    pub label: f64,
     pub note: f64,
     pub call_out: f64,
     pub view: f64,
     pub number: f64,
-    pub source: String,
 }
 
 #[derive(Debug, Deserialize)]
@@ -311,6 +316,7 @@ pub struct SheetSize {
     pub height: f64,
     pub fields: [u32; 2],
     pub pens: Pens,
+    pub text: TextHeights,
     pub source: String,
 }
 

@@ -5,7 +5,7 @@ mod documents;
 mod found_at_edges;
 mod found_in_audit;
 mod found_in_plan;
-mod generator;
+pub mod generator;
 mod mirror;
 mod model_schema;
 mod small;

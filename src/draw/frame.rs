@@ -2,7 +2,7 @@
 
 use super::paper::{Area, Lettering, Paper, Spot, text_area};
 use crate::job::Job;
-use crate::scene::{Anchor, Layer, Pen, Weight};
+use crate::scene::{Anchor, Layer, Pen};
 use crate::tables::{SheetSize, tables};
 
 /// What the title block says besides the job.
@@ -47,7 +47,7 @@ pub fn frame(paper: &mut Paper, size: &SheetSize) {
 fn fields(paper: &mut Paper, size: &SheetSize, area: &Area, pen: Pen) {
     const STRIP: f64 = 5.0;
     const LETTERS: &[u8] = b"ABCDEFGHJKLMNPQRSTUVWXYZ";
-    let lettering = Lettering { layer: Layer::Frame, mark: String::new(), height: 2.5, weight: Weight::Regular };
+    let lettering = Lettering { layer: Layer::Frame, mark: String::new(), height: 3.5 };
     for axis in 0..2 {
         let middle = (area.min[axis] + area.max[axis]) / 2.0;
         let half = f64::from(size.fields[axis]) / 2.0;
@@ -58,9 +58,9 @@ fn fields(paper: &mut Paper, size: &SheetSize, area: &Area, pen: Pen) {
             for outer in [area.min[1 - axis], area.max[1 - axis]] {
                 let sign = if outer == area.min[1 - axis] { -1.0 } else { 1.0 };
                 let (line, text) = if axis == 0 {
-                    ([[w[1], outer], [w[1], outer + sign * STRIP]], [at, outer + sign * STRIP / 2.0 + 1.2])
+                    ([[w[1], outer], [w[1], outer + sign * STRIP]], [at, outer + sign * STRIP / 2.0 + 1.3])
                 } else {
-                    ([[outer, w[1]], [outer + sign * STRIP, w[1]]], [outer + sign * STRIP / 2.0, at + 1.2])
+                    ([[outer, w[1]], [outer + sign * STRIP, w[1]]], [outer + sign * STRIP / 2.0, at + 1.3])
                 };
                 if i + 1 < edges.len() - 1 {
                     paper.scene.line(Layer::Frame, &line, pen);
@@ -78,46 +78,37 @@ pub fn title_block(paper: &mut Paper, job: &Job, title: &Title, width: f64) -> f
     let head = &job.head;
     let kind = if head.revision.starts_with('P') { "preliminary" } else { "contractual" };
     let sheets = format!("{} of {}", title.number, title.of);
-    // Rows from the bottom up: (height, [(share of width, label, value, height of text)]).
-    type Cell<'c> = (f64, &'c str, &'c str, f64);
+    let text = title.size.text;
+    let large = if text.note > 3.0 { 5.0 } else { 3.5 };
+    // Rows from the bottom up: height of the value, [(share of width, label, value)].
+    type Cell<'c> = (f64, &'c str, &'c str);
     let date = head.date_text();
+    let status = if head.status.is_empty() { kind } else { &head.status };
+    let schedule = if head.schedule.is_empty() { "of this drawing" } else { &head.schedule };
     let rows: Vec<(f64, Vec<Cell>)> = vec![
-        (13.0, vec![(0.62, "Drawing number", &head.drawing, 7.0), (0.19, "Revision", &head.revision, 7.0), (0.19, "Sheet", &sheets, 3.5)]),
-        (9.0, vec![(0.25, "Job number", &head.number, 3.5), (0.25, "Date", &date, 3.5), (0.5, "Scales", &title.scales, 2.5)]),
-        (
-            9.0,
-            vec![
-                (0.25, "Drawn", &head.drawn_by, 2.5),
-                (0.25, "Checked", &head.checked_by, 2.5),
-                (0.25, "Approved", "", 2.5),
-                (0.25, "Status", if head.status.is_empty() { kind } else { &head.status }, 2.5),
-            ],
-        ),
-        (
-            9.0,
-            vec![
-                (0.5, "Document", title.document, 2.5),
-                (0.5, "Bar schedule", if head.schedule.is_empty() { "see the schedule of this drawing" } else { &head.schedule }, 2.5),
-            ],
-        ),
-        (10.0, vec![(1.0, "Title", &head.title, 3.5)]),
-        (9.0, vec![(0.5, "Client", &head.client, 2.5), (0.5, "Site", &head.site, 2.5)]),
-        (11.0, vec![(1.0, "Project", &head.project, 5.0)]),
+        (text.number, vec![(0.58, "Drawing number", head.drawing.as_str()), (0.21, "Revision", &head.revision), (0.21, "Sheet", &sheets)]),
+        (text.note, vec![(1.0, "Scales", &title.scales)]),
+        (large, vec![(0.30, "Job number", &head.number), (0.35, "Date of issue", &date), (0.35, "Status", status)]),
+        (text.note, vec![(0.333, "Drawn", &head.drawn_by), (0.333, "Checked", &head.checked_by), (0.334, "Approved", "")]),
+        (text.note, vec![(0.5, "Document type", title.document), (0.5, "Bar schedule", schedule)]),
+        (large, vec![(1.0, "Title", &head.title)]),
+        (text.note, vec![(0.5, "Client", &head.client), (0.5, "Site", &head.site)]),
+        (5.0, vec![(0.62, "Project", &head.project), (0.38, "Legal owner", "")]),
     ];
     let pen = Pen::solid(title.size.pens.concrete);
-    let label = Lettering { layer: Layer::Frame, mark: String::new(), height: 1.8, weight: Weight::Regular };
+    let label = Lettering { layer: Layer::Frame, mark: String::new(), height: text.label };
     let mut y = area.max[1];
-    for (height, cells) in rows {
-        let top = y - height;
+    for (size, cells) in rows {
+        let top = y - row_height(text.label, size);
         paper.line(Layer::Frame, "", &[[x0, top], [x1, top]], pen);
         let mut x = x0;
-        for (share, name, value, size) in cells {
+        for (share, name, value) in cells {
             let right = x + share * width;
             if x > x0 {
                 paper.line(Layer::Frame, "", &[[x, top], [x, y]], pen);
             }
-            paper.text(&label, Spot { at: [x + 1.2, top + 2.8], anchor: Anchor::Start, upward: false }, name);
-            fitted(paper, [x + 1.2, y - 1.8], right - x - 2.4, size, value);
+            paper.text(&label, Spot { at: [x + 1.2, top + text.label + 1.0], anchor: Anchor::Start, upward: false }, name);
+            fitted(paper, [x + 1.2, y - 0.25 * size - 0.7], right - x - 2.4, size, text.label, value);
             x = right;
         }
         y = top;
@@ -126,10 +117,16 @@ pub fn title_block(paper: &mut Paper, job: &Job, title: &Title, width: f64) -> f
     revisions(paper, job, title, x0, width, y)
 }
 
+/// Height of a row: label, value, air.
+fn row_height(label: f64, value: f64) -> f64 {
+    1.0 + 1.25 * label + 0.5 + 1.25 * value + 0.7
+}
+
 /// The revision table over the title block; returns its top.
 fn revisions(paper: &mut Paper, job: &Job, title: &Title, x0: f64, width: f64, bottom: f64) -> f64 {
-    const ROW: f64 = 5.5;
     let pen = Pen::solid(title.size.pens.thin);
+    let note = title.size.text.note;
+    let row_height = (1.25 * note + 2.0).max(5.5);
     let head = &job.head;
     let date = head.date_text();
     let kind = if head.revision.starts_with('P') { "Preliminary issue" } else { "Contractual issue" };
@@ -137,11 +134,11 @@ fn revisions(paper: &mut Paper, job: &Job, title: &Title, x0: f64, width: f64, b
     let shares = [0.10, 0.18, 0.42, 0.15, 0.15];
     let mut y = bottom;
     for row in rows {
-        let top = y - ROW;
+        let top = y - row_height;
         paper.line(Layer::Frame, "", &[[x0, top], [x0 + width, top]], pen);
         let mut x = x0;
         for (text, share) in row.iter().zip(shares) {
-            fitted(paper, [x + 1.2, y - 1.6], share * width - 2.0, 2.5, text);
+            fitted(paper, [x + 1.2, y - 0.25 * note - 1.0], share * width - 2.0, note, title.size.text.label, text);
             x += share * width;
         }
         y = top;
@@ -150,22 +147,24 @@ fn revisions(paper: &mut Paper, job: &Job, title: &Title, x0: f64, width: f64, b
     y
 }
 
-/// Text of a field: as high as wished, lower where it would not fit, but never under 1.8 mm; then on two lines.
-fn fitted(paper: &mut Paper, at: [f64; 2], room: f64, height: f64, text: &str) {
-    let weight = if height > 3.0 { Weight::Medium } else { Weight::Regular };
-    let width = |h: f64| text_area([0.0, 0.0], h, text, Anchor::Start, weight, false).width();
-    let fits = [height, 5.0, 3.5, 2.5, 1.8].into_iter().filter(|h| *h <= height).find(|h| width(*h) <= room);
-    let height = fits.unwrap_or(1.8);
-    let lettering = Lettering { layer: Layer::Frame, mark: String::new(), height, weight };
-    let spot = |y: f64| Spot { at: [at[0], y], anchor: Anchor::Start, upward: false };
-    if fits.is_some() {
-        paper.text(&lettering, spot(at[1]), text);
-        return;
-    }
-    for (i, line) in crate::tables::font::wrap(text, height, room).iter().take(2).enumerate() {
-        paper.text(&lettering, spot(at[1] - 2.4 + 2.6 * i as f64), line);
-    }
+/// Text of a field: as high as wished, lower where it would not fit, but never under the least of the sheet; then cut at a word.
+fn fitted(paper: &mut Paper, at: [f64; 2], room: f64, height: f64, least: f64, text: &str) {
+    let width = |h: f64, text: &str| text_area([0.0, 0.0], h, text, Anchor::Start, false).width();
+    let fits = [height, 5.0, 3.5, 2.5, 1.8].into_iter().filter(|h| *h <= height && *h >= least).find(|h| width(*h, text) <= room);
+    let lettering = Lettering::new(Layer::Frame, fits.unwrap_or(least));
+    let shown = if fits.is_some() { text.to_string() } else { shortened(text, |t| width(least, t) <= room) };
+    paper.text(&lettering, Spot::level(at, Anchor::Start), &shown);
 }
 
-/// Height of the title block with its revision table, mm.
-pub const TITLE_HEIGHT: f64 = 70.0 + 11.0;
+/// As many words as fit, with dots for the rest.
+fn shortened(text: &str, fits: impl Fn(&str) -> bool) -> String {
+    let mut short: Vec<char> = text.chars().collect();
+    while !short.is_empty() {
+        let tried: String = short.iter().collect::<String>().trim_end().to_string() + "...";
+        if fits(&tried) {
+            return tried;
+        }
+        short.pop();
+    }
+    String::new()
+}

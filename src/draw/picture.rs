@@ -2,7 +2,7 @@
 
 use super::paper::{Lettering, Paper, Spot};
 use crate::place::BarType;
-use crate::scene::{Anchor, Layer, Pen, Weight};
+use crate::scene::{Anchor, Layer, Pen};
 use crate::tables::{Walk, tables};
 
 /// Draws the shape of a mark into a box, its legs at set proportions, its letters beside them.
@@ -53,7 +53,7 @@ pub fn shape(paper: &mut Paper, bar: &BarType, min: [f64; 2], max: [f64; 2], pen
     if code.path.len() < 2 {
         return;
     }
-    let lettering = Lettering { layer: Layer::Text, mark: String::new(), height: 1.8, weight: Weight::Regular };
+    let lettering = Lettering { layer: Layer::Text, mark: String::new(), height: 1.8 };
     let centre = [drawn.iter().map(|p| p[0]).sum::<f64>() / drawn.len() as f64, drawn.iter().map(|p| p[1]).sum::<f64>() / drawn.len() as f64];
     let last = legs.len() - 1;
     for (i, (letter, place, heading, length)) in legs.into_iter().enumerate() {

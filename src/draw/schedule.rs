@@ -8,7 +8,7 @@ use crate::job::Job;
 use crate::place::{BarModel, BarType, SlabModel};
 use crate::report::schedule::{COLUMNS, row};
 use crate::report::steel;
-use crate::scene::{Anchor, Bookmark, Layer, Pen, Scene, Weight};
+use crate::scene::{Anchor, Bookmark, Layer, Pen, Scene};
 use crate::table::{Align, Table};
 use crate::tables::font::wrap;
 use crate::tables::tables;
@@ -25,8 +25,8 @@ const WIDTHS: [f64; 15] = [19.0, 14.0, 16.0, 16.0, 17.0, 14.0, 20.0, 14.0, 17.0,
 const FINE: f64 = 0.18;
 const BOLD: f64 = 0.35;
 
-fn lettering(height: f64, weight: Weight) -> Lettering {
-    Lettering { layer: Layer::Text, mark: String::new(), height, weight }
+fn lettering(height: f64) -> Lettering {
+    Lettering { layer: Layer::Text, mark: String::new(), height }
 }
 
 /// Pages of the schedule, the summary last.
@@ -66,10 +66,10 @@ fn page(job: &Job, stamp: Option<&str>, title: &str, number: usize, of: usize) -
     paper.scene.title = format!("{} bar schedule, revision {}", head.drawing, head.revision);
     paper.scene.description = format!("{title} of {}, {}, page {number} of {of}", head.drawing, head.project);
     paper.scene.rect(Layer::Frame, MIN, MAX, Pen::solid(BOLD));
-    let big = lettering(5.0, Weight::Medium);
+    let big = lettering(5.0);
     paper.text(&big, Spot { at: [MIN[0] + 3.0, MIN[1] + 8.5], anchor: Anchor::Start, upward: false }, title);
     if let Some(stamp) = stamp {
-        paper.text(&lettering(2.5, Weight::Medium), Spot { at: [MAX[0] - 3.0, MIN[1] + 8.0], anchor: Anchor::End, upward: false }, stamp);
+        paper.text(&lettering(2.5), Spot { at: [MAX[0] - 3.0, MIN[1] + 8.0], anchor: Anchor::End, upward: false }, stamp);
     }
     let reference = if head.schedule.is_empty() { "none given" } else { &head.schedule };
     let date = head.date_text();
@@ -86,11 +86,11 @@ fn page(job: &Job, stamp: Option<&str>, title: &str, number: usize, of: usize) -
             if j > 0 {
                 paper.scene.line(Layer::Frame, &[[x, y], [x, y + 7.5]], Pen::solid(FINE));
             }
-            let label = paper.text(&lettering(1.8, Weight::Regular), Spot { at: [x + 2.0, y + 5.2], anchor: Anchor::Start, upward: false }, name);
+            let label = paper.text(&lettering(1.8), Spot { at: [x + 2.0, y + 5.2], anchor: Anchor::Start, upward: false }, name);
             let at = label.max[0] + 2.0;
             let room = x + [130.0, 75.0, 67.0][j] - at - 2.0;
-            let height = if text_area([0.0; 2], 2.5, value, Anchor::Start, Weight::Medium, false).width() <= room { 2.5 } else { 1.8 };
-            paper.text(&lettering(height, Weight::Medium), Spot { at: [at, y + 5.2], anchor: Anchor::Start, upward: false }, value);
+            let height = if text_area([0.0; 2], 2.5, value, Anchor::Start, false).width() <= room { 2.5 } else { 1.8 };
+            paper.text(&lettering(height), Spot { at: [at, y + 5.2], anchor: Anchor::Start, upward: false }, value);
         }
     }
     foot(&mut paper, job, number, of);
@@ -108,11 +108,11 @@ fn foot(paper: &mut Paper, job: &Job, number: usize, of: usize) {
     ];
     let mut at = y + 3.8;
     for line in lines.iter().flat_map(|l| wrap(l, 1.8, MAX[0] - MIN[0] - 42.0)) {
-        paper.text(&lettering(1.8, Weight::Regular), Spot { at: [MIN[0] + 2.0, at], anchor: Anchor::Start, upward: false }, &line);
+        paper.text(&lettering(1.8), Spot { at: [MIN[0] + 2.0, at], anchor: Anchor::Start, upward: false }, &line);
         at += 3.3;
     }
     let sheet = format!("Sheet {number} of {of}");
-    paper.text(&lettering(2.5, Weight::Medium), Spot { at: [MAX[0] - 3.0, MAX[1] - 3.0], anchor: Anchor::End, upward: false }, &sheet);
+    paper.text(&lettering(2.5), Spot { at: [MAX[0] - 3.0, MAX[1] - 3.0], anchor: Anchor::End, upward: false }, &sheet);
 }
 
 fn bar_page(job: &Job, stamp: Option<&str>, rows: &[(&SlabModel, &BarType)], number: usize, of: usize) -> Scene {
@@ -129,8 +129,7 @@ fn bar_page(job: &Job, stamp: Option<&str>, rows: &[(&SlabModel, &BarType)], num
                 Some(cell) if i > 0 || before != Some(cell.as_str()) => {
                     let right = COLUMNS[i].starts_with('>');
                     let (at, anchor) = if right { (x + width - 2.5, Anchor::End) } else { (x + width / 2.0, Anchor::Middle) };
-                    let weight = if i == 1 { Weight::Medium } else { Weight::Regular };
-                    let mut own = lettering(2.5, weight);
+                    let mut own = lettering(2.5);
                     own.mark.clone_from(&bar.mark);
                     paper.text(&own, Spot { at: [at, y + 5.9], anchor, upward: false }, cell);
                 }
@@ -166,7 +165,7 @@ fn column_heads(paper: &mut Paper) {
         let lines = wrap(name, 1.8, width - 2.0);
         let first = (HEAD_TOP + BODY_TOP) / 2.0 + 0.9 - (lines.len() as f64 - 1.0) * 1.4;
         for (j, line) in lines.iter().enumerate() {
-            paper.text(&lettering(1.8, Weight::Medium), Spot { at: [x + width / 2.0, first + 2.8 * j as f64], anchor: Anchor::Middle, upward: false }, line);
+            paper.text(&lettering(1.8), Spot { at: [x + width / 2.0, first + 2.8 * j as f64], anchor: Anchor::Middle, upward: false }, line);
         }
         x += width;
     }
@@ -180,7 +179,7 @@ fn mass_page(job: &Job, stamp: Option<&str>, table: &Table, number: usize, of: u
     let left = MIN[0] + 4.0;
     let mut x = left;
     for (column, width) in table.columns.iter().zip(widths) {
-        cell(&mut paper, x, width, y, &column.name, column.align, Weight::Medium);
+        cell(&mut paper, x, width, y, &column.name, column.align);
         x += width;
     }
     paper.scene.line(Layer::Frame, &[[MIN[0], y + 2.2], [MAX[0], y + 2.2]], Pen::solid(BOLD));
@@ -194,19 +193,18 @@ fn mass_page(job: &Job, stamp: Option<&str>, table: &Table, number: usize, of: u
         let mut x = left;
         for (i, ((text, column), width)) in row.iter().zip(&table.columns).zip(widths).enumerate() {
             let shown = if i == 0 && before == group { "" } else { text.as_str() };
-            let weight = if group == "total" { Weight::Medium } else { Weight::Regular };
-            cell(&mut paper, x, width, y, shown, column.align, weight);
+            cell(&mut paper, x, width, y, shown, column.align);
             x += width;
         }
         before = group;
     }
     let note = "Each group adds up to the total. Laps are part of the mass; they count once, on one of the two bars. Rates are per gross plan area and volume.";
-    paper.text(&lettering(1.8, Weight::Regular), Spot { at: [left, BODY_END - 3.0], anchor: Anchor::Start, upward: false }, note);
+    paper.text(&lettering(1.8), Spot { at: [left, BODY_END - 3.0], anchor: Anchor::Start, upward: false }, note);
     paper.scene.bookmarks = vec![Bookmark { title: "Steel summary".into() }];
     paper.scene
 }
 
-fn cell(paper: &mut Paper, x: f64, width: f64, y: f64, text: &str, align: Align, weight: Weight) {
+fn cell(paper: &mut Paper, x: f64, width: f64, y: f64, text: &str, align: Align) {
     let (at, anchor) = if align == Align::Right { (x + width - 2.0, Anchor::End) } else { (x, Anchor::Start) };
-    paper.text(&lettering(2.5, weight), Spot { at: [at, y], anchor, upward: false }, text);
+    paper.text(&lettering(2.5), Spot { at: [at, y], anchor, upward: false }, text);
 }

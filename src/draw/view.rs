@@ -1,7 +1,28 @@
 //! From slab to paper: one station line for all bands of a sheet, and the occurrences of each mark on it.
 
+use crate::job::Slab;
 use crate::place::{BarType, Set, SlabModel};
-use crate::tables::{Pens, SheetSize, tables};
+use crate::tables::{Pens, SheetSize};
+use std::collections::BTreeMap;
+
+/// A slab to be drawn: as designed, as placed, and where each mark stands.
+pub struct Subject<'a> {
+    pub slab: &'a Slab,
+    pub model: &'a SlabModel,
+    pub occurrences: Vec<Occurrence<'a>>,
+}
+
+impl<'a> Subject<'a> {
+    pub fn new(slab: &'a Slab, model: &'a SlabModel) -> Subject<'a> {
+        Subject { slab, model, occurrences: Occurrence::of(model) }
+    }
+
+    /// The grid line nearest to a station.
+    pub fn nearest_grid(&self, station: f64) -> f64 {
+        let grids = self.model.stations.supports.iter().map(|s| s.centre);
+        grids.min_by(|a, b| (a - station).abs().total_cmp(&(b - station).abs())).unwrap_or(station)
+    }
+}
 
 /// The part of a slab on one sheet and how it maps to paper.
 #[derive(Clone, Debug)]
@@ -14,14 +35,16 @@ pub struct View {
     /// Where station 0 falls on paper, mm.
     pub origin: f64,
     pub pens: Pens,
+    /// Heights of notes and dimensions, call-outs, view titles, mm.
     pub note: f64,
     pub call_out: f64,
+    pub title: f64,
 }
 
 impl View {
     pub fn new(size: &SheetSize, scale: f64, low: f64, high: f64, left: f64) -> View {
-        let text = &tables().sheets.text;
-        View { scale, low, high, origin: left - low / scale, pens: size.pens, note: text.note, call_out: text.call_out }
+        let text = size.text;
+        View { scale, low, high, origin: left - low / scale, pens: size.pens, note: text.note, call_out: text.call_out, title: text.view }
     }
 
     /// A station on paper, mm.
@@ -58,28 +81,30 @@ pub struct Occurrence<'a> {
 impl<'a> Occurrence<'a> {
     /// All zones of all marks of a slab, marks in order, zones as they come.
     pub fn of(slab: &'a SlabModel) -> Vec<Occurrence<'a>> {
+        slab.bars.iter().flat_map(Occurrence::of_mark).collect()
+    }
+
+    fn of_mark(bar: &'a BarType) -> Vec<Occurrence<'a>> {
         let mut list: Vec<Occurrence<'a>> = Vec::new();
-        for bar in &slab.bars {
-            let start = list.len();
-            for set in &bar.sets {
-                // Turned bars of one zone are two views of it; a mark that stands at both slab ends has two zones.
-                match list[start..].iter_mut().find(|o| o.zone == set.zone && o.extent() == extent(set)) {
-                    Some(known) if bar.is_along_span() => known.sets.push(set),
-                    _ if !bar.is_along_span() => match list[start..].iter_mut().find(|o| o.zone == set.zone) {
-                        Some(known) => known.sets.push(set),
-                        None => list.push(Occurrence::new(bar, set, list.len() == start)),
-                    },
-                    _ => list.push(Occurrence::new(bar, set, list.len() == start)),
+        let mut known: BTreeMap<(&str, u64, u64), usize> = BTreeMap::new();
+        for set in &bar.sets {
+            // Turned bars of one zone are two views of it; a mark that stands at both slab ends has two zones.
+            let (low, high) = if bar.is_along_span() { extent(set) } else { (0.0, 0.0) };
+            match known.entry((&set.zone, low.to_bits(), high.to_bits())) {
+                std::collections::btree_map::Entry::Occupied(at) => list[*at.get()].sets.push(set),
+                std::collections::btree_map::Entry::Vacant(free) => {
+                    free.insert(list.len());
+                    list.push(Occurrence::new(bar, set, list.is_empty()));
                 }
             }
         }
-        for i in 0..list.len() {
-            let same_mark = |o: &Occurrence| o.bar.mark == list[i].bar.mark;
-            let zone = list[i].zone;
-            let in_zone = list.iter().filter(|o| same_mark(o) && o.zone == zone).map(Occurrence::count).sum();
-            let leads = list.iter().position(|o| same_mark(o) && o.zone == zone) == Some(i);
-            let elsewhere = list.iter().any(|o| same_mark(o) && o.zone != zone);
-            (list[i].in_zone, list[i].leads, list[i].elsewhere) = (in_zone, leads, elsewhere);
+        let mut zones: BTreeMap<&str, (u32, usize)> = BTreeMap::new();
+        for (i, occurrence) in list.iter().enumerate() {
+            zones.entry(occurrence.zone).or_insert((0, i)).0 += occurrence.count();
+        }
+        for (i, occurrence) in list.iter_mut().enumerate() {
+            let (count, first) = zones.get(occurrence.zone).copied().unwrap_or((0, i));
+            (occurrence.in_zone, occurrence.leads, occurrence.elsewhere) = (count, first == i, zones.len() > 1);
         }
         list
     }

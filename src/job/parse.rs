@@ -3,7 +3,6 @@
 use super::*;
 use crate::diagnose::{Fault, shown};
 use crate::read::{Section, nearest, parse, text};
-use crate::scene::Weight;
 use crate::tables::{Allowance, font, tables};
 use itertools::Itertools;
 use std::cell::RefCell;
@@ -140,8 +139,7 @@ pub(super) fn printed(section: &Section, key: &'static str, required: bool, most
         );
         return None;
     }
-    let (regular, medium) = (font::face(Weight::Regular), font::face(Weight::Medium));
-    if let Some(letter) = text.value.chars().find(|c| !regular.has(*c) || !medium.has(*c)) {
+    if let Some(letter) = text.value.chars().find(|c| !font::face().has(*c)) {
         section.fault(
             Fault::new("no-letter", span, format!("`{key}` holds {:?} (U+{:04X})", letter, letter as u32))
                 .label("cannot be drawn")

@@ -1,6 +1,5 @@
 //! The shipped font: its bytes for the writers and its widths for whoever lays out text.
 
-use crate::scene::Weight;
 use std::collections::HashMap;
 use std::sync::OnceLock;
 
@@ -14,28 +13,15 @@ pub struct Face {
     advances: HashMap<char, f64>,
 }
 
-/// The two faces, regular and medium.
-pub fn face(weight: Weight) -> &'static Face {
-    static FACES: OnceLock<[Face; 2]> = OnceLock::new();
-    let faces = FACES.get_or_init(|| {
-        [
-            load(
-                include_bytes!("../../templates/fonts/RobotoCondensed-Regular.sub.ttf"),
-                include_bytes!("../../templates/fonts/RobotoCondensed-Regular.sub.woff2"),
-            ),
-            load(
-                include_bytes!("../../templates/fonts/RobotoCondensed-Medium.sub.ttf"),
-                include_bytes!("../../templates/fonts/RobotoCondensed-Medium.sub.woff2"),
-            ),
-        ]
-    });
-    match weight {
-        Weight::Regular => &faces[0],
-        Weight::Medium => &faces[1],
-    }
+/// The one face of every document.
+pub fn face() -> &'static Face {
+    static FACE: OnceLock<Face> = OnceLock::new();
+    FACE.get_or_init(|| {
+        load(include_bytes!("../../templates/fonts/RobotoCondensed-Regular.sub.ttf"), include_bytes!("../../templates/fonts/RobotoCondensed-Regular.sub.woff2"))
+    })
 }
 
-/// The shipped file is part of the program, so a face that does not parse is a fault of the build; a test draws with both.
+/// The shipped file is part of the program, so a face that does not parse is a fault of the build; every test draws with it.
 #[allow(clippy::expect_used)]
 fn load(bytes: &'static [u8], woff2: &'static [u8]) -> Face {
     let parsed = ttf_parser::Face::parse(bytes, 0).expect("the shipped font parses");
@@ -66,7 +52,7 @@ impl Face {
 
 /// Breaks a text at spaces into lines no wider than `width` mm; a single word may be wider.
 pub fn wrap(text: &str, height: f64, width: f64) -> Vec<String> {
-    let font = face(Weight::Regular);
+    let font = face();
     let mut lines: Vec<String> = Vec::new();
     let mut line = String::new();
     for word in text.split_whitespace() {

@@ -1,6 +1,6 @@
 //! Scenes as a PDF: one page each, layers a viewer can switch, bookmarks, real text in the shipped font. Same scenes, same bytes.
 
-use crate::scene::{Anchor, Layer, Pen, Scene, Shape, Weight};
+use crate::scene::{Anchor, Layer, Pen, Scene, Shape};
 use crate::tables::font::{CAPITAL, face};
 use crate::write::svg::dashes;
 use lopdf::{Dictionary, Object, StringFormat};
@@ -10,16 +10,16 @@ use printpdf::{
 };
 
 const POINTS_PER_MM: f64 = 72.0 / 25.4;
+/// Six capitals and a plus sign: the name of an embedded subset (ISO 32000 9.6.4).
+const FONT_NAME: &str = "SLABWR+RobotoCondensed-Regular";
 const PRODUCER: &str = concat!("slabwright ", env!("CARGO_PKG_VERSION"));
 
 /// The bytes of a PDF. Errors where the shipped font cannot be read or the file not be put together.
 pub fn write(scenes: &[Scene], date: (u16, u8, u8), title: &str, subject: &str) -> Result<Vec<u8>, String> {
     let mut document = PdfDocument::new(title);
-    for (id, weight, name) in [("F0", Weight::Regular, "SLABWR+RobotoCondensed-Regular"), ("F1", Weight::Medium, "SLABWR+RobotoCondensed-Medium")] {
-        let mut font = ParsedFont::from_bytes(face(weight).bytes, 0, &mut Vec::new()).ok_or("the shipped font cannot be read")?;
-        font.font_name = Some(name.to_string());
-        document.resources.fonts.map.insert(FontId(id.into()), PdfFont::new(font));
-    }
+    let mut font = ParsedFont::from_bytes(face().bytes, 0, &mut Vec::new()).ok_or("the shipped font cannot be read")?;
+    font.font_name = Some(FONT_NAME.to_string());
+    document.resources.fonts.map.insert(FontId("F0".into()), PdfFont::new(font));
     for (i, layer) in Layer::ALL.iter().enumerate() {
         let mut own = printpdf::Layer::new(layer.name());
         own.creator = PRODUCER.into();
@@ -145,9 +145,8 @@ fn draw(ops: &mut Vec<Op>, shape: &Shape, ink: &mut Ink) {
                 ops.push(Op::DrawLine { line: Line { points: ring, is_closed: true } });
             }
         }
-        Shape::Text { at, height, text, anchor, weight, upward } => {
-            let id = if *weight == Weight::Regular { "F0" } else { "F1" };
-            let width = face(*weight).width(text, *height);
+        Shape::Text { at, height, text, anchor, upward } => {
+            let width = face().width(text, *height);
             let back = match anchor {
                 Anchor::Start => 0.0,
                 Anchor::Middle => width / 2.0,
@@ -157,7 +156,7 @@ fn draw(ops: &mut Vec<Op>, shape: &Shape, ink: &mut Ink) {
             let p = point(at, ink);
             let turn: [f32; 4] = if *upward { [0.0, 1.0, -1.0, 0.0] } else { [1.0, 0.0, 0.0, 1.0] };
             ops.push(Op::StartTextSection);
-            ops.push(Op::SetFont { font: PdfFontHandle::External(FontId(id.into())), size: Pt(points(height / CAPITAL)) });
+            ops.push(Op::SetFont { font: PdfFontHandle::External(FontId("F0".into())), size: Pt(points(height / CAPITAL)) });
             ops.push(Op::SetTextMatrix { matrix: TextMatrix::Raw([turn[0], turn[1], turn[2], turn[3], p.x.0, p.y.0]) });
             ops.push(Op::ShowText { items: vec![TextItem::Text(text.chars().filter(|c| !c.is_control()).collect())] });
             ops.push(Op::EndTextSection);

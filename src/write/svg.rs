@@ -1,6 +1,6 @@
 //! A scene as SVG: 1 user unit = 1 mm, a group for each layer and each mark, real text in the shipped font.
 
-use crate::scene::{Anchor, Dash, Layer, Pen, Scene, Shape, Weight};
+use crate::scene::{Anchor, Dash, Layer, Pen, Scene, Shape};
 use crate::tables::font::{CAPITAL, FAMILY, face};
 use base64::Engine;
 use std::collections::BTreeMap;
@@ -19,7 +19,7 @@ pub fn write(scene: &Scene) -> String {
         .set("lang", "en-GB");
     root.append(labelled("title", "title", &scene.title));
     root.append(labelled("desc", "desc", &scene.description));
-    root.append(Style::new(style(scene)));
+    root.append(Style::new(style()));
     let mut paper = Element::new("rect");
     paper.assign("width", number(scene.width));
     paper.assign("height", number(scene.height));
@@ -40,18 +40,12 @@ fn labelled(tag: &str, id: &str, text: &str) -> Element {
     element
 }
 
-fn style(scene: &Scene) -> String {
-    let uses = |weight: Weight| scene.items.iter().any(|i| matches!(&i.shape, Shape::Text { weight: w, .. } if *w == weight));
-    let mut css = String::new();
-    for (weight, value) in [(Weight::Regular, 400), (Weight::Medium, 500)] {
-        if uses(weight) {
-            let data = base64::engine::general_purpose::STANDARD.encode(face(weight).woff2);
-            css.push_str(&format!("@font-face{{font-family:'{FAMILY}';font-weight:{value};src:url(data:font/woff2;base64,{data}) format('woff2')}}\n"));
-        }
-    }
-    css.push_str(&format!("text{{font-family:'{FAMILY}','Arial Narrow',sans-serif;font-weight:400;fill:#000}}\n.m{{font-weight:500}}\n"));
-    css.push_str("path,circle{fill:none;stroke:#000;stroke-linecap:butt;stroke-linejoin:miter}\n.f{fill:#000;stroke:none}");
-    css
+fn style() -> String {
+    let data = base64::engine::general_purpose::STANDARD.encode(face().woff2);
+    let font = format!("@font-face{{font-family:'{FAMILY}';src:url(data:font/woff2;base64,{data}) format('woff2')}}\n");
+    let text = format!("text{{font-family:'{FAMILY}','Arial Narrow',sans-serif;fill:#000}}\n");
+    let line = "path,circle{fill:none;stroke:#000;stroke-linecap:butt;stroke-linejoin:miter}\n.f{fill:#000;stroke:none}";
+    font + &text + line
 }
 
 /// Items of one layer: first those of no mark, then a group for each mark.
@@ -156,7 +150,7 @@ fn element(shape: &Shape) -> Element {
             }
             element
         }
-        Shape::Text { at, height, text, anchor, weight, upward } => {
+        Shape::Text { at, height, text, anchor, upward } => {
             let mut element = Element::new("text");
             element.assign("x", number(at[0]));
             element.assign("y", number(at[1]));
@@ -166,14 +160,11 @@ fn element(shape: &Shape) -> Element {
                 Anchor::Middle => element.assign("text-anchor", "middle"),
                 Anchor::End => element.assign("text-anchor", "end"),
             }
-            if *weight == Weight::Medium {
-                element.assign("class", "m");
-            }
             if *upward {
                 element.assign("transform", format!("rotate(-90 {} {})", number(at[0]), number(at[1])));
             }
             // The width of the shipped font, so that another font in its place cannot run into its neighbours.
-            element.assign("textLength", number(face(*weight).width(text, *height)));
+            element.assign("textLength", number(face().width(text, *height)));
             element.append(TextNode::new(clean(text)));
             element
         }

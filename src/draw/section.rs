@@ -1,13 +1,12 @@
-//! Sections: along the span as a band, and close-ups of slab ends and side edges. Bars stand at their true levels.
+//! Sections: an upright cut through the slab, along the span as a band or close up at ends and edges. Bars stand at their true levels.
 
-use super::paper::{Area, Lettering, Paper, Spot};
-use super::plan_view::level_dimension;
-use super::view::View;
-use crate::base::{mm, num};
-use crate::job::Slab;
-use crate::place::{BarType, SlabModel};
+use super::dimension::upright;
+use super::paper::{Lettering, Paper, Spot};
+use super::view::{Subject, View};
+use crate::base::num;
+use crate::place::BarType;
 use crate::plan::{Layer as BarLayer, Role};
-use crate::scene::{Anchor, Dash, Layer, Pen, Weight};
+use crate::scene::{Anchor, Layer, Pen};
 use crate::tables::tables;
 
 /// A cut dot is never drawn smaller than this radius, mm on paper.
@@ -15,8 +14,7 @@ const LEAST_DOT: f64 = 0.55;
 
 /// An upright cut through the slab: stations along `axis` (0 along the span, 1 across it) against levels.
 pub struct Cut<'a> {
-    pub slab: &'a Slab,
-    pub model: &'a SlabModel,
+    pub subject: &'a Subject<'a>,
     pub axis: usize,
     /// Stations shown, mm.
     pub low: f64,
@@ -27,20 +25,25 @@ pub struct Cut<'a> {
     pub level_scale: f64,
     /// Paper x of `low`, paper y of the top of the slab.
     pub corner: [f64; 2],
+    /// Whether bars that lie one behind the other are drawn apart.
+    pub apart: bool,
 }
 
+/// Paper between bars of one level that are drawn apart, mm.
+const APART: f64 = 1.2;
+
 impl Cut<'_> {
-    fn x(&self, station: f64) -> f64 {
+    pub(super) fn x(&self, station: f64) -> f64 {
         self.corner[0] + (station - self.low) / self.scale
     }
 
-    fn y(&self, level: f64) -> f64 {
-        self.corner[1] + (self.slab.thickness.value - level) / self.level_scale
+    pub(super) fn y(&self, level: f64) -> f64 {
+        self.corner[1] + (self.subject.slab.thickness.value - level) / self.level_scale
     }
 
     /// Height of the slab on paper, mm.
     pub fn height(&self) -> f64 {
-        self.slab.thickness.value / self.level_scale
+        self.subject.slab.thickness.value / self.level_scale
     }
 
     pub fn width(&self) -> f64 {
@@ -51,9 +54,10 @@ impl Cut<'_> {
     pub fn draw(&self, paper: &mut Paper, v: &View, stub: f64) -> Vec<(String, [f64; 2])> {
         self.concrete(paper, v, stub);
         let mut points = Vec::new();
-        for bar in &self.model.bars {
+        let mut levels: Vec<[f64; 3]> = Vec::new();
+        for bar in &self.subject.model.bars {
             if bar.is_along_span() == (self.axis == 0) {
-                points.extend(self.in_plane(paper, v, bar));
+                points.extend(self.in_plane(paper, v, bar, &mut levels));
             } else {
                 points.extend(self.cut(paper, bar));
             }
@@ -65,7 +69,7 @@ impl Cut<'_> {
         let pen = Pen::solid(v.pens.concrete);
         let (from, to) = self.concrete_extent();
         let (low, high) = (self.low.max(from), self.high.min(to));
-        let h = self.slab.thickness.value;
+        let h = self.subject.slab.thickness.value;
         let top = [[self.x(low), self.y(h)], [self.x(high), self.y(h)]];
         paper.line(Layer::Concrete, "", &top, pen);
         // The soffit runs between the faces of what holds the slab.
@@ -116,22 +120,22 @@ impl Cut<'_> {
         }
     }
 
-    fn concrete_extent(&self) -> (f64, f64) {
-        if self.axis == 0 { (self.model.stations.start, self.model.stations.end) } else { (0.0, self.slab.width.value) }
+    pub(super) fn concrete_extent(&self) -> (f64, f64) {
+        if self.axis == 0 { (self.subject.model.stations.start, self.subject.model.stations.end) } else { (0.0, self.subject.slab.width.value) }
     }
 
     /// What the slab rests on in this cut, as lengths of stations.
-    fn holders(&self) -> Vec<(f64, f64)> {
+    pub(super) fn holders(&self) -> Vec<(f64, f64)> {
         if self.axis == 0 {
-            return self.model.stations.supports.iter().map(|s| (s.left_face, s.right_face)).collect();
+            return self.subject.model.stations.supports.iter().map(|s| (s.left_face, s.right_face)).collect();
         }
-        let width = self.slab.width.value;
+        let width = self.subject.slab.width.value;
         let mut held = Vec::new();
-        if self.slab.edges[0].is_held() {
-            held.push((0.0, self.slab.edge_width[0]));
+        if self.subject.slab.edges[0].is_held() {
+            held.push((0.0, self.subject.slab.edge_width[0]));
         }
-        if self.slab.edges[1].is_held() {
-            held.push((width - self.slab.edge_width[1], width));
+        if self.subject.slab.edges[1].is_held() {
+            held.push((width - self.subject.slab.edge_width[1], width));
         }
         held
     }
@@ -145,7 +149,7 @@ impl Cut<'_> {
     }
 
     /// Bars in the plane of the cut: each different centre line once.
-    fn in_plane(&self, paper: &mut Paper, v: &View, bar: &BarType) -> Vec<(String, [f64; 2])> {
+    fn in_plane(&self, paper: &mut Paper, v: &View, bar: &BarType, levels: &mut Vec<[f64; 3]>) -> Vec<(String, [f64; 2])> {
         let across = 1 - self.axis;
         let mut seen: Vec<Vec<[f64; 2]>> = Vec::new();
         let mut points = Vec::new();
@@ -162,7 +166,8 @@ impl Cut<'_> {
                 continue;
             }
             let radius = tables().known_bar(bar.size).radius + f64::from(bar.size) / 2.0;
-            let rounded = rounded(&line, radius);
+            let shown = if self.apart { self.drawn_apart(&line, levels) } else { line.clone() };
+            let rounded = rounded(&shown, radius);
             let clipped = clip(&rounded, self.low, self.high);
             for piece in clipped {
                 let paper_line: Vec<[f64; 2]> = piece.iter().map(|p| [self.x(p[0]), self.y(p[1])]).collect();
@@ -183,8 +188,31 @@ impl Cut<'_> {
         points
     }
 
+    /// A line whose level pieces that would cover others are moved towards the middle of the slab, not to scale.
+    fn drawn_apart(&self, line: &[[f64; 2]], levels: &mut Vec<[f64; 3]>) -> Vec<[f64; 2]> {
+        let middle = self.subject.slab.thickness.value / 2.0;
+        let mut shown = line.to_vec();
+        let step = APART * self.level_scale;
+        for i in 1..line.len() {
+            let (a, b) = (line[i - 1], line[i]);
+            if a[1] != b[1] {
+                continue;
+            }
+            let (from, to) = (a[0].min(b[0]).max(self.low), a[0].max(b[0]).min(self.high));
+            let inward = if a[1] < middle { step } else { -step };
+            let covers = |z: f64| levels.iter().any(|l| (l[2] - z).abs() < 0.7 * step && l[0] < to && from < l[1]);
+            let mut z = a[1];
+            while covers(z) && (z - a[1]).abs() < 3.5 * step {
+                z += inward;
+            }
+            (shown[i - 1][1], shown[i][1]) = (z, z);
+            levels.push([from, to, z]);
+        }
+        shown
+    }
+
     /// Whether a set that starts at `first` and runs on by `reach` has a bar within half a metre of the cut.
-    fn is_near(&self, first: f64, reach: f64) -> bool {
+    pub(super) fn is_near(&self, first: f64, reach: f64) -> bool {
         let (a, b) = (first.min(first + reach), first.max(first + reach));
         self.at > a - 500.0 && self.at < b + 500.0
     }
@@ -216,106 +244,33 @@ impl Cut<'_> {
     }
 }
 
-/// A close-up with its title and the marks in it.
-pub fn close_up(paper: &mut Paper, v: &View, cut: &Cut, title: &str, within: &Area) {
-    let points = cut.draw(paper, v, 7.0);
-    let heading = Lettering { layer: Layer::Text, mark: String::new(), height: v.note, weight: Weight::Medium };
-    let x = cut.corner[0];
-    paper.text(&heading, Spot { at: [x, cut.corner[1] - 11.0], anchor: Anchor::Start, upward: false }, title);
-    thickness(paper, v, cut);
-    lengths(paper, v, cut);
-    point_at(paper, v, cut, points, within);
-}
-
-/// What a fixer needs at an edge: the bearing, and the legs back of closing bars from their outer face.
-fn lengths(paper: &mut Paper, v: &View, cut: &Cut) {
-    let (from, to) = cut.concrete_extent();
-    let soffit = cut.y(0.0);
-    let mut rows = soffit + 13.5;
-    for (a, b) in cut.holders() {
-        let (a, b) = (a.max(from), b.min(to));
-        if a >= cut.low - 0.5 && b <= cut.high + 0.5 && b > a {
-            level_dimension(paper, v, cut.x(a), cut.x(b), rows, &format!("bearing {}", mm(b - a)));
-            rows += 5.5;
-        }
-    }
-    // The shortest closing leg that ends within the view.
-    let across = 1 - cut.axis;
-    let closing = cut.model.bars.iter().filter(|b| matches!(b.shape, "21" | "13") && b.is_along_span() == (cut.axis == 0));
-    let legs = closing
-        .flat_map(|b| b.sets.iter().map(move |s| (b, s)))
-        .filter(|(_, s)| cut.axis == 0 || cut.is_near(s.axis[0][across], s.step[across] * f64::from(s.count.saturating_sub(1))));
-    let seen = legs.filter_map(|(bar, set)| {
-        let half = f64::from(bar.size) / 2.0;
-        let (first, last) = (set.axis.first()?, set.axis.last()?);
-        let end = if first[2] < last[2] { first } else { last };
-        let face = set.axis.windows(2).find(|w| w[0][cut.axis] == w[1][cut.axis]).map(|w| w[0][cut.axis])?;
-        let outer = if end[cut.axis] > face { face - half } else { face + half };
-        let inside = |x: f64| x >= cut.low && x <= cut.high;
-        (inside(end[cut.axis]) && inside(outer)).then_some((bar, outer, end[cut.axis]))
-    });
-    if let Some((bar, outer, end)) = seen.min_by(|a, b| (a.1 - a.2).abs().total_cmp(&(b.1 - b.2).abs())) {
-        level_dimension(paper, v, cut.x(outer), cut.x(end), rows, &format!("{} leg {}", bar.mark, mm((end - outer).abs())));
-    }
-}
-
-/// Marks with leaders: above the slab for what lies in its upper half, below for the rest, spread so that they do not meet.
-fn point_at(paper: &mut Paper, v: &View, cut: &Cut, mut points: Vec<(String, [f64; 2])>, within: &Area) {
-    let lettering = |mark: &str| Lettering { layer: Layer::CallOut, mark: mark.into(), height: v.note, weight: Weight::Medium };
-    points.sort_by(|a, b| a.1[0].total_cmp(&b.1[0]));
-    let middle = cut.corner[1] + cut.height() / 2.0;
-    for upper in [true, false] {
-        let own: Vec<&(String, [f64; 2])> = points.iter().filter(|p| (p.1[1] < middle) == upper).collect();
-        for (mark, at) in own {
-            let y = if upper { cut.corner[1] - 4.6 } else { cut.corner[1] + cut.height() + 8.6 };
-            // From close by outwards, to both sides.
-            let spots = (0..40).map(|i| {
-                let step = f64::from((i + 1) / 2) * 1.7 * if i % 2 == 0 { 1.0 } else { -1.0 };
-                Spot { at: [at[0] + 3.0 + step, y], anchor: Anchor::Middle, upward: false }
-            });
-            let (area, _) = paper.place(&lettering(mark), spots, mark, within);
-            paper.reserve(area.grown(0.9));
-            let middle = (area.min[0] + area.max[0]) / 2.0;
-            let foot = [middle, if upper { area.max[1] + 0.3 } else { area.min[1] - 0.3 }];
-            paper.line(Layer::CallOut, mark, &[*at, foot], Pen::solid(v.pens.thin));
-        }
-    }
-}
-
-/// The thickness at the broken or far side of a close-up.
-fn thickness(paper: &mut Paper, v: &View, cut: &Cut) {
-    let ends_high = cut.high < cut.concrete_extent().1 - 0.5;
-    let x = if ends_high { cut.x(cut.high) + 7.0 } else { cut.x(cut.low) - 5.0 };
-    let from = if ends_high { cut.x(cut.high) + 1.5 } else { cut.x(cut.low) - 1.5 };
-    super::plan_view::upright_dimension(paper, v, x, cut.y(cut.slab.thickness.value), cut.y(0.0), from, &mm(cut.slab.thickness.value));
-}
-
-/// Names of the layers at the left end of the section band, and the level of the top.
+/// Names of the layers at the left end of the section band, the level of the top and the thickness at its right end.
 pub fn name_layers(paper: &mut Paper, v: &View, cut: &Cut) {
-    let lettering = Lettering { layer: Layer::Text, mark: String::new(), height: v.note, weight: Weight::Regular };
+    let lettering = Lettering::new(Layer::Text, v.note);
     let x = cut.x(cut.low);
+    let thin = Pen::solid(v.pens.thin);
     let mut levels: Vec<(BarLayer, f64)> = Vec::new();
     for layer in [BarLayer::T1, BarLayer::T2, BarLayer::B2, BarLayer::B1] {
-        let of_layer = cut.model.bars.iter().filter(|b| b.layer == layer || layer == BarLayer::T1 && b.role == Role::EndTop);
-        let z = of_layer.flat_map(|b| &b.sets).map(|s| s.axis[0][2]).next();
+        let of_layer = cut.subject.model.bars.iter().filter(|b| b.layer == layer || layer == BarLayer::T1 && b.role == Role::EndTop);
+        let z = of_layer.flat_map(|b| &b.sets).map(|s| s.axis[0][2].max(s.axis.last().map_or(0.0, |p| p[2]))).next();
         levels.extend(z.map(|z| (layer, z)));
     }
-    let top = cut.corner[1] - 0.5;
-    let spread = (cut.height() + 1.0) / 3.0;
+    let pitch = ((cut.height() + 1.0) / 3.0).max(1.25 * v.note + 0.5);
+    let top = cut.corner[1] + cut.height() / 2.0 - pitch * (levels.len() as f64 - 1.0) / 2.0;
     for (i, (layer, z)) in levels.iter().enumerate() {
-        let y = top + (i as f64 * spread.max(3.2)) + 1.0;
-        paper.text(&lettering, Spot { at: [x - 9.0, y + 1.2], anchor: Anchor::End, upward: false }, layer.name());
-        paper.scene.line(Layer::Text, &[[x - 8.2, y], [x - 1.5, cut.y(*z)]], Pen { width: v.pens.thin, dash: Dash::Solid });
+        let y = top + i as f64 * pitch;
+        paper.text(&lettering, Spot::level([x - 9.0, y + v.note / 2.0], Anchor::End), layer.name());
+        paper.line(Layer::Text, "", &[[x - 8.2, y], [x - 1.5, cut.y(*z)]], thin);
     }
-    if let Some(level) = cut.slab.level {
-        let x1 = cut.x(cut.high);
+    let right = cut.x(cut.high);
+    if let Some(level) = cut.subject.slab.level {
         let sign = if level >= 0.0 { "+" } else { "" };
         let text = format!("{sign}{:.3}", level / 1000.0);
-        paper.text(&lettering, Spot { at: [x1 + 8.0, cut.corner[1] - 1.0], anchor: Anchor::Start, upward: false }, &text);
-        paper.scene.line(Layer::Dimension, &[[x1 + 1.0, cut.corner[1]], [x1 + 20.0, cut.corner[1]]], Pen::solid(v.pens.thin));
+        let area = paper.text(&lettering, Spot::level([right + 9.0, cut.corner[1] - 0.25 * v.note - 0.6], Anchor::Start), &text);
+        paper.line(Layer::Dimension, "", &[[right + 1.0, cut.corner[1]], [area.max[0], cut.corner[1]]], thin);
     }
-    let text = num(cut.slab.thickness.value, 0);
-    super::plan_view::upright_dimension(paper, v, cut.x(cut.high) + 5.0, cut.y(cut.slab.thickness.value), cut.y(0.0), cut.x(cut.high) + 1.0, &text);
+    let text = num(cut.subject.slab.thickness.value, 0);
+    upright(paper, v, right + 5.0, cut.y(cut.subject.slab.thickness.value), cut.y(0.0), right + 1.0, &text);
 }
 
 /// A line with its corners rounded to a radius.

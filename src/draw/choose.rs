@@ -1,0 +1,157 @@
+//! Which sheets a slab stands on: the largest scale first, for each the smallest sheet, whole before in parts, until every text has
+//! a place of its own. What does not fit goes on a larger sheet, then at a smaller scale, then over several sheets cut at supports.
+
+use super::bands::{self, Band, Gap, Neighbour, PAIRED, STACKED, margin};
+use super::plan_view::BREAK;
+use super::sheet::{Choice, Drawn, Frame, band_area, sheet};
+use super::view::{Subject, View};
+use crate::finding::Check;
+use crate::job::Job;
+use crate::place::BarModel;
+use crate::scene::Scene;
+use crate::tables::{SheetSize, tables};
+
+/// Every sheet of a job.
+pub fn sheets(job: &Job, model: &BarModel, checks: &[Vec<Check>]) -> Vec<Scene> {
+    let subjects: Vec<Subject> = job.slabs.iter().zip(&model.slabs).map(|(slab, placed)| Subject::new(slab, placed)).collect();
+    let single = Frame { job, model, checks, of: 1 };
+    let mut chosen: Vec<(Vec<Choice>, Vec<Drawn>)> = subjects.iter().map(|s| choose(&single, s, None)).collect();
+    // All sheets of a drawing have one size: the largest that one of them needs.
+    let sizes = || chosen.iter().flat_map(|(c, _)| c.iter().map(|c| c.size));
+    if let Some(largest) = sizes().max_by(|a, b| a.width.total_cmp(&b.width)).filter(|l| sizes().any(|s| s.name != l.name)) {
+        chosen = subjects.iter().map(|s| choose(&single, s, Some(&largest.name))).collect();
+    }
+    let of = chosen.iter().map(|(c, _)| c.len()).sum();
+    if of == 1 {
+        return chosen.into_iter().flat_map(|(_, drawn)| drawn).map(|d| d.scene).collect();
+    }
+    // Now that the number of sheets is known, each is drawn with its own.
+    let all = Frame { of, ..single };
+    let mut scenes = Vec::new();
+    for (subject, (choices, _)) in subjects.iter().zip(&chosen) {
+        let first = scenes.len() + 1;
+        scenes.extend(draw(&all, subject, choices, first).into_iter().map(|d| d.scene));
+    }
+    scenes
+}
+
+/// The first way to draw a slab in which every text finds its place; where there is none, the one that leaves the fewest over.
+fn choose(all: &Frame, subject: &Subject, size: Option<&str>) -> (Vec<Choice>, Vec<Drawn>) {
+    let mut best: Option<(usize, Vec<Choice>, Vec<Drawn>)> = None;
+    for choices in ways(all.job, subject, size) {
+        let drawn = draw(all, subject, &choices, 1);
+        if drawn.len() < choices.len() {
+            continue;
+        }
+        let unplaced = drawn.iter().map(|d| d.unplaced.len()).sum();
+
+        if unplaced == 0 {
+            return (choices, drawn);
+        }
+        if best.as_ref().is_none_or(|(least, _, _)| unplaced < *least) {
+            best = Some((unplaced, choices, drawn));
+        }
+    }
+    best.map(|(_, choices, drawn)| (choices, drawn)).unwrap_or_default()
+}
+
+/// The sheets of one way, numbered from `first`; fewer than asked where one does not fit.
+fn draw(all: &Frame, subject: &Subject, choices: &[Choice], first: usize) -> Vec<Drawn> {
+    let mut drawn = Vec::new();
+    for (i, choice) in choices.iter().enumerate() {
+        let number = first + i;
+        let mut neighbours = Vec::new();
+        let grid = |station: f64| {
+            let at = subject.model.stations.supports.iter().position(|s| (s.centre - station).abs() < 0.5);
+            at.and_then(|j| subject.model.grids.get(j)).cloned().unwrap_or_default()
+        };
+        if i > 0 {
+            neighbours.push(Neighbour { station: choice.low, grid: grid(choice.low), sheet: number - 1 });
+        }
+        if i + 1 < choices.len() {
+            neighbours.push(Neighbour { station: choice.high, grid: grid(choice.high), sheet: number + 1 });
+        }
+        match sheet(all, subject, choice, number, &neighbours) {
+            Some(done) => drawn.push(done),
+            None => break,
+        }
+    }
+    drawn
+}
+
+/// Ways to set a slab on sheets, the best first, each once.
+fn ways(job: &Job, subject: &Subject, size: Option<&str>) -> Vec<Vec<Choice>> {
+    let all = &tables().sheets;
+    let sizes: Vec<&'static SheetSize> = ["A3", "A2", "A1"]
+        .iter()
+        .filter(|name| size.or(job.head.sheet.as_deref()).is_none_or(|wanted| wanted == **name))
+        .filter_map(|name| all.sizes.iter().find(|s| s.name == **name))
+        .collect();
+    let scales: Vec<f64> = all.scales.iter().filter(|s| job.head.scale.is_none_or(|wanted| wanted == **s)).map(|s| f64::from(*s)).collect();
+    let st = &subject.model.stations;
+    let (low, high) = (st.start.min(st.supports[0].centre), st.end.max(st.supports[st.last()].centre));
+    let mut ways = Vec::new();
+    for scale in &scales {
+        for size in &sizes {
+            for columns in [STACKED, PAIRED] {
+                ways.push(vec![Choice { size, scale: *scale, low, high, gap: None, columns }]);
+            }
+        }
+    }
+    let Some(size) = sizes.last() else { return ways };
+    let mut add = |way: Vec<Choice>| {
+        if !ways.iter().any(|known| same(known, &way)) {
+            ways.push(way);
+        }
+    };
+    // In parts: as few as the scale allows, then fewer spans a sheet, then larger scales.
+    for scale in scales.iter().rev() {
+        for share in [1.0, 0.7, 0.5, 0.34] {
+            for columns in [STACKED, PAIRED] {
+                let v = View::new(size, *scale, low, high, 0.0);
+                let room = band_area(size).width() / columns.len() as f64 - 2.0 * margin(&v);
+                let parts = windows(subject, low, high, room * scale * share);
+                let gap = gap(subject, &v, size, columns);
+                add(parts.into_iter().map(|(low, high)| Choice { size, scale: *scale, low, high, gap, columns }).collect());
+            }
+        }
+    }
+    ways
+}
+
+fn same(one: &[Choice], other: &[Choice]) -> bool {
+    let alike = |(a, b): (&Choice, &Choice)| {
+        a.size.name == b.size.name && a.scale == b.scale && a.low == b.low && a.high == b.high && a.gap == b.gap && a.columns.len() == b.columns.len()
+    };
+    one.len() == other.len() && one.iter().zip(other).all(alike)
+}
+
+/// What is left out across a slab too wide for the sheet, mm; none where it fits.
+fn gap(subject: &Subject, v: &View, size: &SheetSize, columns: &[&[Band]]) -> Gap {
+    let width = subject.slab.width.value;
+    let excess = columns.iter().map(|c| {
+        let plans = c.iter().filter(|b| matches!(b, Band::BottomPlan | Band::TopPlan)).count().max(1) as f64;
+        (bands::height(subject, v, None, c) - band_area(size).height()) / plans
+    });
+    let excess = excess.fold(0.0, f64::max);
+    if excess <= 0.0 {
+        return None;
+    }
+    let out = ((excess + BREAK + 1.0) * v.scale).min(width - 1500.0).max(0.0);
+    let from = 0.72 * (width - out);
+    Some((from, from + out))
+}
+
+/// Parts of a slab no longer than `most`, cut at supports.
+fn windows(subject: &Subject, low: f64, high: f64, most: f64) -> Vec<(f64, f64)> {
+    let mut cuts = vec![low];
+    let mut at = low;
+    for pair in subject.model.stations.supports.windows(2).skip(1) {
+        if pair[1].centre - at > most && pair[0].centre > at {
+            cuts.push(pair[0].centre);
+            at = pair[0].centre;
+        }
+    }
+    cuts.push(high);
+    cuts.windows(2).map(|w| (w[0], w[1])).collect()
+}
