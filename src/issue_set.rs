@@ -94,12 +94,9 @@ impl IssueSet {
 /// The number written at each mark's call-out on the sheets.
 fn drawn_numbers(sheets: &[Scene]) -> BTreeMap<String, u32> {
     let mut numbers = BTreeMap::new();
-    for item in sheets.iter().flat_map(|s| &s.items).filter(|i| i.layer == crate::scene::Layer::CallOut && !i.mark.is_empty()) {
-        let crate::scene::Shape::Text { text, .. } = &item.shape else { continue };
-        let digits: String = text.chars().take_while(char::is_ascii_digit).collect();
-        let is_call_out = text[digits.len()..].starts_with(|c: char| c.is_ascii_uppercase()) && text.contains(&format!("-{}", item.mark));
-        if is_call_out && let Ok(number) = digits.parse::<u32>() {
-            numbers.insert(item.mark.clone(), number);
+    for call_out in sheets.iter().flat_map(Scene::call_outs) {
+        if let Some(number) = call_out.number() {
+            numbers.insert(call_out.mark.to_string(), number);
         }
     }
     numbers

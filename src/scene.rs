@@ -96,9 +96,23 @@ pub struct Item {
     pub shape: Shape,
 }
 
-#[derive(Clone, Debug)]
+/// A place that a reader may want to jump to.
+#[derive(Clone, Debug, PartialEq)]
 pub struct Bookmark {
     pub title: String,
+    /// Upper left corner of what is shown, mm.
+    pub at: [f64; 2],
+    /// 0 for the page, 1 for a view on it, 2 for a mark in the view.
+    pub level: u8,
+}
+
+/// Where the schedule lists a mark: lowest and highest corner, mm.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Row {
+    pub mark: String,
+    pub area: [[f64; 2]; 2],
+    /// The cell that holds the mark.
+    pub cell: [[f64; 2]; 2],
 }
 
 #[derive(Clone, Debug, Default)]
@@ -107,13 +121,48 @@ pub struct Scene {
     pub description: String,
     pub width: f64,
     pub height: f64,
+    /// In reading order; a bookmark stands under the last one before it of a lower level.
     pub bookmarks: Vec<Bookmark>,
-    /// Role of each mark's bars, such as `span-bottom`.
+    pub rows: Vec<Row>,
+    /// What the bars of each mark are for, such as `span-bottom`.
     pub roles: BTreeMap<String, String>,
+    /// Each mark in words, such as `mark 04, H12, T1`.
+    pub names: BTreeMap<String, String>,
     pub items: Vec<Item>,
 }
 
+/// A text that calls out a mark.
+#[derive(Clone, Copy, Debug)]
+pub struct CallOut<'s> {
+    pub mark: &'s str,
+    pub text: &'s str,
+    pub shape: &'s Shape,
+}
+
+impl CallOut<'_> {
+    /// The number of bars where the text has it: `37H12-01-200 B1` says 37. A mark without its number says nothing.
+    pub fn number(&self) -> Option<u32> {
+        let digits = self.text.find(|c: char| !c.is_ascii_digit()).map_or(self.text, |end| &self.text[..end]);
+        let is_full = self.text[digits.len()..].starts_with(|c: char| c.is_ascii_uppercase()) && self.text.contains(&format!("-{}", self.mark));
+        if is_full { digits.parse().ok() } else { None }
+    }
+}
+
 impl Scene {
+    /// Every text that calls out a mark, in the order drawn.
+    pub fn call_outs(&self) -> impl Iterator<Item = CallOut<'_>> {
+        self.items.iter().filter(|i| i.layer == Layer::CallOut && !i.mark.is_empty()).filter_map(|item| match &item.shape {
+            shape @ Shape::Text { text, .. } => Some(CallOut { mark: &item.mark, text, shape }),
+            _ => None,
+        })
+    }
+
+    /// The call-out of a mark that a reader wants first: the one with the number, else the first drawn.
+    pub fn call_out(&self, mark: &str) -> Option<CallOut<'_>> {
+        let own = || self.call_outs().filter(|c| c.mark == mark);
+        own().find(|c| c.number().is_some()).or_else(|| own().next())
+    }
+
     pub fn push(&mut self, layer: Layer, mark: &str, shape: Shape) {
         self.items.push(Item { layer, mark: mark.into(), shape });
     }

@@ -1,8 +1,11 @@
 //! Finished scenes, tables and the model become bytes: one file a format, one row each in `FORMATS`. Computes no length, chooses no layout.
 
 pub mod csv;
+pub mod pages;
 pub mod pdf;
 pub mod svg;
+
+use crate::scene::Scene;
 
 /// The parts that every document is made from.
 pub struct Parts<'a> {
@@ -10,8 +13,8 @@ pub struct Parts<'a> {
     pub date: (u16, u8, u8),
     pub title: &'a str,
     pub project: &'a str,
-    pub sheets: &'a [crate::scene::Scene],
-    pub schedule: &'a [crate::scene::Scene],
+    pub sheets: &'a [Scene],
+    pub schedule: &'a [Scene],
     pub schedule_table: &'a crate::table::Table,
     pub steel_table: &'a crate::table::Table,
     pub model_json: &'a str,
@@ -63,6 +66,14 @@ pub const FORMATS: &[Format] = &[
         make: schedule_csv,
     },
     Format {
+        key: "set-pdf",
+        group: "set",
+        files: "DRAWING-set.pdf",
+        what: "sheets and schedule in one file, marks linked both ways",
+        user: "site, tablet",
+        make: set_pdf,
+    },
+    Format {
         key: "steel",
         group: "steel",
         files: "DRAWING-steel.csv",
@@ -92,7 +103,7 @@ fn one(parts: &Parts, suffix: &str, bytes: Vec<u8>) -> Result<Vec<Artifact>, Str
 }
 
 fn sheet_pdf(parts: &Parts) -> Result<Vec<Artifact>, String> {
-    one(parts, "sheet.pdf", pdf::write(parts.sheets, parts.date, parts.title, parts.project)?)
+    pdf_of(parts, "sheet.pdf", "", parts.sheets.iter())
 }
 
 fn sheet_svg(parts: &Parts) -> Result<Vec<Artifact>, String> {
@@ -101,8 +112,17 @@ fn sheet_svg(parts: &Parts) -> Result<Vec<Artifact>, String> {
 }
 
 fn schedule_pdf(parts: &Parts) -> Result<Vec<Artifact>, String> {
-    let title = format!("{} - bar schedule", parts.title);
-    one(parts, "schedule.pdf", pdf::write(parts.schedule, parts.date, &title, parts.project)?)
+    pdf_of(parts, "schedule.pdf", " - bar schedule", parts.schedule.iter())
+}
+
+fn set_pdf(parts: &Parts) -> Result<Vec<Artifact>, String> {
+    pdf_of(parts, "set.pdf", " - sheets and bar schedule", parts.sheets.iter().chain(parts.schedule))
+}
+
+fn pdf_of<'s>(parts: &Parts, suffix: &str, addition: &str, scenes: impl Iterator<Item = &'s Scene>) -> Result<Vec<Artifact>, String> {
+    let scenes: Vec<&Scene> = scenes.collect();
+    let title = format!("{}{addition}", parts.title);
+    one(parts, suffix, pdf::write(&scenes, parts.date, &title, parts.project)?)
 }
 
 fn schedule_csv(parts: &Parts) -> Result<Vec<Artifact>, String> {

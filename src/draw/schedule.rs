@@ -152,7 +152,7 @@ fn bar_page(job: &Job, stamp: Option<&str>, rows: &[(&SlabModel, &BarType)], num
             paper.scene.line(Layer::Frame, &[[x, HEAD_TOP], [x, y]], Pen::solid(FINE));
         }
     }
-    paper.scene.bookmarks = vec![Bookmark { title: format!("Schedule, sheet {number}") }];
+    paper.scene.bookmarks = vec![Bookmark { title: format!("Schedule, sheet {number}"), at: [0.0, 0.0], level: 0 }];
     paper.scene
 }
 
@@ -200,7 +200,7 @@ fn mass_page(job: &Job, stamp: Option<&str>, table: &Table, number: usize, of: u
     }
     let note = "Each group adds up to the total. Laps are part of the mass; they count once, on one of the two bars. Rates are per gross plan area and volume.";
     paper.text(&lettering(1.8), Spot { at: [left, BODY_END - 3.0], anchor: Anchor::Start, upward: false }, note);
-    paper.scene.bookmarks = vec![Bookmark { title: "Steel summary".into() }];
+    paper.scene.bookmarks = vec![Bookmark { title: "Steel summary".into(), at: [0.0, 0.0], level: 0 }];
     paper.scene
 }
 

@@ -50,6 +50,14 @@ impl Face {
     }
 }
 
+/// The corners of the box that a text fills on paper, mm: its capitals and descenders. `before` is the share of its width that lies
+/// before `at`; a text that reads upward runs towards the top of the sheet.
+pub fn text_box(at: [f64; 2], height: f64, text: &str, before: f64, upward: bool) -> [[f64; 2]; 2] {
+    let width = face().width(text, height);
+    let (above, below, back) = (height, 0.25 * height, before * width);
+    if upward { [[at[0] - above, at[1] - width + back], [at[0] + below, at[1] + back]] } else { [[at[0] - back, at[1] - above], [at[0] - back + width, at[1] + below]] }
+}
+
 /// Breaks a text at spaces into lines no wider than `width` mm; a single word may be wider.
 pub fn wrap(text: &str, height: f64, width: f64) -> Vec<String> {
     let font = face();

@@ -2,6 +2,7 @@
 
 use crate::scene::{Anchor, Layer, Pen, Scene, Shape};
 use crate::tables::font::{CAPITAL, face};
+use crate::write::pages;
 use crate::write::svg::dashes;
 use lopdf::{Dictionary, Object, StringFormat};
 use printpdf::{
@@ -15,7 +16,7 @@ const FONT_NAME: &str = "SLABWR+RobotoCondensed-Regular";
 const PRODUCER: &str = concat!("slabwright ", env!("CARGO_PKG_VERSION"));
 
 /// The bytes of a PDF. Errors where the shipped font cannot be read or the file not be put together.
-pub fn write(scenes: &[Scene], date: (u16, u8, u8), title: &str, subject: &str) -> Result<Vec<u8>, String> {
+pub fn write(scenes: &[&Scene], date: (u16, u8, u8), title: &str, subject: &str) -> Result<Vec<u8>, String> {
     let mut document = PdfDocument::new(title);
     let mut font = ParsedFont::from_bytes(face().bytes, 0, &mut Vec::new()).ok_or("the shipped font cannot be read")?;
     font.font_name = Some(FONT_NAME.to_string());
@@ -28,21 +29,19 @@ pub fn write(scenes: &[Scene], date: (u16, u8, u8), title: &str, subject: &str) 
     document.metadata.info.creator = PRODUCER.into();
     document.metadata.info.producer = PRODUCER.into();
     document.metadata.info.subject = subject.into();
-    for (i, scene) in scenes.iter().enumerate() {
-        for bookmark in &scene.bookmarks {
-            document.add_bookmark(&bookmark.title, i + 1);
-        }
+    for scene in scenes {
         document.pages.push(PdfPage::new(Mm(scene.width as f32), Mm(scene.height as f32), page(scene)));
     }
     let options = PdfSaveOptions { optimize: true, subset_fonts: false, secure: true, image_optimization: None };
     let mut file = document.to_lopdf_document(&options, &mut Vec::new());
+    pages::join(&mut file, scenes)?;
     repair(&mut file, date)?;
     let mut bytes = Vec::new();
     file.save_to(&mut bytes).map_err(|e| e.to_string())?;
     Ok(bytes)
 }
 
-/// What the library leaves out or writes amiss: version, page mode, dates, identifiers that differ from run to run.
+/// What the library leaves out or writes amiss: version, dates, identifiers that differ from run to run.
 fn repair(file: &mut lopdf::Document, date: (u16, u8, u8)) -> Result<(), String> {
     file.version = "1.7".into();
     let fault = |e: lopdf::Error| e.to_string();
@@ -55,11 +54,7 @@ fn repair(file: &mut lopdf::Document, date: (u16, u8, u8)) -> Result<(), String>
         info.set("CreationDate", stamp.clone());
         info.set("ModDate", stamp);
     }
-    let root = file.trailer.get(b"Root").and_then(Object::as_reference).map_err(fault)?;
-    let catalog = file.get_object_mut(root).and_then(Object::as_dict_mut).map_err(fault)?;
-    if catalog.has(b"PageMode") {
-        catalog.set("PageMode", Object::Name(b"UseOutlines".to_vec()));
-    }
+    let catalog = file.catalog_mut().map_err(fault)?;
     catalog.set("Lang", Object::String(b"en-GB".to_vec(), StringFormat::Literal));
     file.compress();
     let id = Object::String(identifier(file), StringFormat::Hexadecimal);
@@ -80,7 +75,7 @@ fn identifier(file: &lopdf::Document) -> Vec<u8> {
 }
 
 /// A length in points, to a thousandth.
-fn points(mm: f64) -> f32 {
+pub(super) fn points(mm: f64) -> f32 {
     ((mm * POINTS_PER_MM * 1000.0).round() / 1000.0) as f32
 }
 

@@ -67,7 +67,15 @@ fn layer_group(scene: &Scene, layer: Layer) -> Option<Element> {
             let mut own = Element::new("g");
             own.assign("id", format!("{}-{}", layer.name(), mark.chars().filter(char::is_ascii_alphanumeric).collect::<String>()));
             own.assign("data-mark", mark);
-            own.assign("data-role", layer.name());
+            own.assign("data-layer", layer.name());
+            if let Some(role) = scene.roles.get(mark) {
+                own.assign("data-role", role.as_str());
+            }
+            if let Some(name) = scene.names.get(mark) {
+                let mut title = Element::new("title");
+                title.append(TextNode::new(clean(name)));
+                own.append(title);
+            }
             draw(&mut own, &shapes);
             group.append(own);
         }

@@ -18,8 +18,8 @@ fn names(dir: &Path) -> Vec<String> {
     files(dir).into_keys().collect()
 }
 
-const SET: [&str; 6] =
-    ["H208-110-model.json", "H208-110-schedule.csv", "H208-110-schedule.pdf", "H208-110-sheet-1.svg", "H208-110-sheet.pdf", "H208-110-steel.csv"];
+const SET: [&str; 7] =
+    ["H208-110-model.json", "H208-110-schedule.csv", "H208-110-schedule.pdf", "H208-110-set.pdf", "H208-110-sheet-1.svg", "H208-110-sheet.pdf", "H208-110-steel.csv"];
 
 #[test]
 fn the_first_job_details_as_it_stands() {
@@ -59,6 +59,7 @@ fn only_writes_only_what_is_named() {
         ("sheet", &["H208-110-sheet-1.svg", "H208-110-sheet.pdf"][..]),
         ("schedule-csv,model", &["H208-110-model.json", "H208-110-schedule.csv"]),
         ("steel", &["H208-110-steel.csv"]),
+        ("set", &["H208-110-set.pdf"]),
     ] {
         let dir = tempfile::tempdir().unwrap();
         assert_eq!(run_in(dir.path(), &["detail", &sample("mill-store.toml"), "--only", only], "").status, 0);
@@ -78,15 +79,15 @@ fn files_of_others_are_left_alone() {
         assert_eq!(files(dir.path()), BTreeMap::from([(name.to_string(), b"a letter to the client".to_vec())]), "{name}");
         std::fs::remove_file(dir.path().join(name)).unwrap();
     }
-    std::fs::write(dir.path().join(SET[4]), "a letter to the client").unwrap();
+    std::fs::write(dir.path().join(SET[5]), "a letter to the client").unwrap();
     assert_eq!(run_in(dir.path(), &["detail", &job, "--force"], "").status, 0);
-    assert!(std::fs::read(dir.path().join(SET[4])).unwrap().starts_with(b"%PDF"));
+    assert!(std::fs::read(dir.path().join(SET[5])).unwrap().starts_with(b"%PDF"));
 }
 
 #[test]
 fn a_folder_in_the_way_is_never_deleted() {
     let dir = tempfile::tempdir().unwrap();
-    let folder = dir.path().join(SET[4]);
+    let folder = dir.path().join(SET[5]);
     std::fs::create_dir(&folder).unwrap();
     std::fs::write(folder.join("precious.txt"), "x").unwrap();
     for force in [&[][..], &["--force"]] {
