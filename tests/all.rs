@@ -12,4 +12,5 @@ mod readme;
 mod rules_hold;
 mod samples;
 mod sheets;
+mod sheets_outside;
 mod tables_cited;

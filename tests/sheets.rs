@@ -1,6 +1,6 @@
 //! The sheets as drawn: no text meets another text, nothing leaves the frame, drawn lengths are true lengths at the stated scale.
 
-mod collisions;
+pub mod collisions;
 mod generated;
 
 use crate::samples::{SAMPLES, sample};

@@ -38,13 +38,17 @@ fn near(at: [f64; 2]) -> [f64; 2] {
 /// Gives a scene the role and the name of every mark of a slab.
 pub fn name_marks(scene: &mut Scene, model: &SlabModel) {
     for bar in &model.bars {
-        scene.roles.insert(bar.mark.clone(), bar.role.name().to_string());
-        scene.names.insert(bar.mark.clone(), name(bar));
+        name_mark(scene, bar);
     }
 }
 
+pub fn name_mark(scene: &mut Scene, bar: &BarType) {
+    scene.roles.insert(bar.mark.clone(), bar.role.name().to_string());
+    scene.names.insert(bar.mark.clone(), name(bar));
+}
+
 /// A mark in words.
-fn name(bar: &BarType) -> String {
+pub fn name(bar: &BarType) -> String {
     let layer = match bar.layer.name() {
         "E" => "edges".to_string(),
         name => name.to_string(),

@@ -72,26 +72,43 @@ pub fn concrete(slab: &SlabModel) -> (f64, f64) {
     (area, area * slab.thickness * 1e-3)
 }
 
-/// The summary for the terminal: by size, by layer, by slab with rates, classes, over-length and laps.
+/// The group of the last row of `masses`.
+pub const TOTAL: &str = "total";
+
+/// A sum with the group it belongs to, and the gross plan area and volume of concrete (m², m³) where a rate has a meaning.
+#[derive(Clone, Debug)]
+pub struct Masses {
+    pub group: &'static str,
+    pub name: String,
+    pub sum: Sum,
+    pub concrete: Option<(f64, f64)>,
+}
+
+/// By size, by slab with its concrete, by layer and class, what is over-length, and the total of all.
+pub fn masses(model: &BarModel) -> Vec<Masses> {
+    let plain = |group: &'static str, name: String, sum: Sum| Masses { group, name, sum, concrete: None };
+    let mut list: Vec<Masses> = Vec::new();
+    list.extend(sums(model, |_, b| Some((b.size, b.type_size()))).into_iter().map(|((_, name), sum)| plain("size", name, sum)));
+    for slab in &model.slabs {
+        let sum = sums(model, |s, _| (s.mark == slab.mark).then_some(())).remove(&()).unwrap_or_default();
+        let name = if slab.members == 1 { slab.mark.clone() } else { format!("{} × {}", slab.mark, slab.members) };
+        list.push(Masses { group: "slab", name, sum, concrete: Some(concrete(slab)) });
+    }
+    list.extend(sums(model, |_, b| Some(b.layer)).into_iter().map(|(layer, sum)| plain("layer", layer.name().to_string(), sum)));
+    list.extend(sums(model, |_, b| Some(class(b))).into_iter().map(|(class, sum)| plain("class", class.to_string(), sum)));
+    let long = sums(model, |_, b| (b.length > OVER_LENGTH).then(|| (b.size, b.type_size())));
+    list.extend(long.into_iter().map(|((_, name), sum)| plain("over 12 m", name, sum)));
+    let all = model.slabs.iter().map(concrete).fold((0.0, 0.0), |a, b| (a.0 + b.0, a.1 + b.1));
+    list.push(Masses { group: TOTAL, name: String::new(), sum: total(model), concrete: Some(all) });
+    list
+}
+
+/// The summary for the terminal: `masses` as one table with rates.
 pub fn summary(model: &BarModel) -> Table {
     let mut table = Table::new(&["steel", "", ">bars", ">length m", ">mass kg", ">laps kg", ">kg/m²", ">kg/m³"]);
-    let groups = [
-        ("size", sums(model, |_, b| Some(format!("{}{:02}", b.letter, b.size)))),
-        ("layer", sums(model, |_, b| Some(b.layer.name().to_string()))),
-        ("class", sums(model, |_, b| Some(class(b).to_string()))),
-        ("over 12 m", sums(model, |_, b| (b.length > OVER_LENGTH).then(|| b.type_size()))),
-    ];
-    for (group, sums) in groups {
-        for (name, sum) in sums {
-            table.row(summary_row(group, name, &sum, None));
-        }
+    for masses in masses(model) {
+        table.row(summary_row(masses.group, masses.name, &masses.sum, masses.concrete));
     }
-    for slab in &model.slabs {
-        let own = sums(model, |s, _| (s.mark == slab.mark).then_some(())).remove(&()).unwrap_or_default();
-        table.row(summary_row("slab", format!("{} × {}", slab.mark, slab.members), &own, Some(concrete(slab))));
-    }
-    let all = model.slabs.iter().map(concrete).fold((0.0, 0.0), |a, b| (a.0 + b.0, a.1 + b.1));
-    table.row(summary_row("total", String::new(), &total(model), Some(all)));
     table
 }
 

@@ -55,7 +55,11 @@ impl Face {
 pub fn text_box(at: [f64; 2], height: f64, text: &str, before: f64, upward: bool) -> [[f64; 2]; 2] {
     let width = face().width(text, height);
     let (above, below, back) = (height, 0.25 * height, before * width);
-    if upward { [[at[0] - above, at[1] - width + back], [at[0] + below, at[1] + back]] } else { [[at[0] - back, at[1] - above], [at[0] - back + width, at[1] + below]] }
+    if upward {
+        [[at[0] - above, at[1] - width + back], [at[0] + below, at[1] + back]]
+    } else {
+        [[at[0] - back, at[1] - above], [at[0] - back + width, at[1] + below]]
+    }
 }
 
 /// Breaks a text at spaces into lines no wider than `width` mm; a single word may be wider.

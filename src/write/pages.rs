@@ -32,7 +32,8 @@ fn destination(page: &Page, at: [f64; 2]) -> Object {
 
 /// Text outside the pages: plain where it is ASCII, else UTF-16 with its byte order mark (ISO 32000 7.9.2.2).
 fn text(text: &str) -> Object {
-    let bytes = if text.is_ascii() { text.as_bytes().to_vec() } else { [0xFEFFu16].into_iter().chain(text.encode_utf16()).flat_map(u16::to_be_bytes).collect() };
+    let bytes =
+        if text.is_ascii() { text.as_bytes().to_vec() } else { [0xFEFFu16].into_iter().chain(text.encode_utf16()).flat_map(u16::to_be_bytes).collect() };
     Object::String(bytes, StringFormat::Literal)
 }
 

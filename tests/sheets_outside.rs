@@ -1,0 +1,5 @@
+//! Sheets and schedules as a reader has them: pages of the schedule, links and bookmarks of the PDFs, and what programs nobody here wrote
+//! make of the files.
+
+mod links;
+mod schedule_pages;
