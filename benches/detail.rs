@@ -57,8 +57,8 @@ fn row(name: &str, source: &[u8], runs: usize) {
     let (checks, audited) = timed(runs, || audit::audit(&job, &model));
     let (sheets, drawn) = timed(runs, || draw::sheets(&job, &model, &checks));
     let (pages, schedule) = timed(runs, || draw::schedule(&job, &model, &checks));
-    let (_, pdf) = timed(runs, || write::pdf::write(&sheets, (2026, 1, 1), "bench", "bench"));
-    let (_, schedule_pdf) = timed(runs, || write::pdf::write(&pages, (2026, 1, 1), "bench", "bench"));
+    let (_, pdf) = timed(runs, || write::pdf::write(&sheets.iter().collect::<Vec<_>>(), (2026, 1, 1), "bench", "bench"));
+    let (_, schedule_pdf) = timed(runs, || write::pdf::write(&pages.iter().collect::<Vec<_>>(), (2026, 1, 1), "bench", "bench"));
     let (_, svg) = timed(runs, || sheets.iter().map(write::svg::write).map(|s| s.len()).sum::<usize>());
     let (_, json) = timed(runs, || report::model::json(&job, &model, &checks));
     let (_, whole) = timed(runs, || issue_set::detail(source, &no_files).set.map(|mut s| s.documents(&[]).map(|d| d.len())));

@@ -2,4 +2,5 @@
 //! make of the files.
 
 mod links;
+mod readers;
 mod schedule_pages;

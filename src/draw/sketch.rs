@@ -148,7 +148,7 @@ fn beside(a: [f64; 2], b: [f64; 2], centre: [f64; 2]) -> Vec<Spot> {
 fn angle(paper: &mut Paper, lettering: &Lettering, corner: &[[f64; 2]], real: &[[f64; 2]], within: &Area) {
     let (u, v) = ([real[0][0] - real[1][0], real[0][1] - real[1][1]], [real[2][0] - real[1][0], real[2][1] - real[1][1]]);
     let between = (u[0] * v[1] - u[1] * v[0]).atan2(u[0] * v[0] + u[1] * v[1]).abs().to_degrees();
-    if (between - 90.0).abs() < 0.05 || between < 0.05 || between > 179.95 {
+    if (between - 90.0).abs() < 0.05 || !(0.05..=179.95).contains(&between) {
         return;
     }
     let spots = [2.5, 3.5, 5.0, 7.0].iter().flat_map(|radius| {
