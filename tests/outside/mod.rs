@@ -4,6 +4,7 @@
 mod areas;
 mod bs8666_lengths;
 mod bs8666_tables;
+mod drawing_tables;
 mod geometry;
 mod geometry_bounds;
 mod ice_manual;
