@@ -1,10 +1,10 @@
 //! Small pictures of shape codes with their letters, walked from the table of shapes.
 
-use super::form::LABEL;
+use super::form::{FINE, LABEL};
 use super::paper::{Area, Lettering, Paper, Spot};
 use crate::place::BarType;
 use crate::scene::{Anchor, Layer, Pen};
-use crate::tables::{ShapeCode, Walk, tables};
+use crate::tables::{Radius, ShapeCode, Walk, tables};
 
 /// Radius of a bend as pictured, mm on paper.
 const BEND: f64 = 1.0;
@@ -13,24 +13,43 @@ const CLEAR: f64 = 0.8;
 /// The longest leg a picture gets, mm on paper.
 const LONGEST: f64 = 24.0;
 
-/// A measured piece of a pictured bar: its letter, its middle and its heading (radians, y up), in units of the longest leg.
+/// Heading of a sloping leg as pictured, radians.
+const SLOPE: f64 = 0.5;
+
+/// A measured piece of a pictured bar: its letter, its ends and its heading (radians, y up), in units of the longest leg.
 struct Leg {
     letter: char,
-    middle: [f64; 2],
+    ends: [[f64; 2]; 2],
     heading: f64,
 }
 
+impl Leg {
+    fn middle(&self) -> [f64; 2] {
+        std::array::from_fn(|i| (self.ends[0][i] + self.ends[1][i]) / 2.0)
+    }
+
+    fn is_sloping(&self) -> bool {
+        (2.0 * self.heading).sin().abs() > 0.01
+    }
+}
+
 /// A shape as walked, y down as paper.
+#[derive(Default)]
 struct Outline {
     points: Vec<[f64; 2]>,
     legs: Vec<Leg>,
+    /// Letters of offsets, each with the legs that it stands between.
+    rises: Vec<(char, usize)>,
+    /// Where the radius of a bend is scheduled.
+    bend: Option<[f64; 2]>,
 }
 
 fn outline(bar: &BarType, code: &ShapeCode) -> Outline {
     let longest = f64::from(bar.dims.values().max().copied().unwrap_or(1).max(1));
-    let mut heading = 0.0f64;
+    // A shape that begins with a slope begins downwards, so that the leg after it lies level.
+    let mut heading = if code.measured.get("A").is_some_and(|how| how.starts_with("along")) { -SLOPE } else { 0.0 };
     let mut at = [0.0f64, 0.0];
-    let mut found = Outline { points: vec![at], legs: Vec::new() };
+    let mut found = Outline { points: vec![at], ..Outline::default() };
     for part in &code.path {
         match part {
             Walk::Leg { leg } => {
@@ -39,7 +58,7 @@ fn outline(bar: &BarType, code: &ShapeCode) -> Outline {
                 // Short legs are drawn longer than they are, so that they can be read.
                 let length = 0.35 + 0.65 * share;
                 let to = [at[0] + length * heading.cos(), at[1] - length * heading.sin()];
-                found.legs.push(Leg { letter, middle: [(at[0] + to[0]) / 2.0, (at[1] + to[1]) / 2.0], heading });
+                found.legs.push(Leg { letter, ends: [at, to], heading });
                 at = to;
                 found.points.push(at);
             }
@@ -51,12 +70,23 @@ fn outline(bar: &BarType, code: &ShapeCode) -> Outline {
                     found.points.push(at);
                     if step == 2 {
                         // The crown is measured by B: its letter stands beside the middle of the bend.
-                        found.legs.push(Leg { letter: 'B', middle: at, heading: std::f64::consts::FRAC_PI_2 });
+                        found.legs.push(Leg { letter: 'B', ends: [at, at], heading: std::f64::consts::FRAC_PI_2 });
                     }
                 }
             }
-            Walk::Turn { turn, .. } => heading += turn.to_radians(),
-            Walk::TurnBy { back, .. } => heading += if *back { -0.5 } else { 0.5 },
+            Walk::Turn { turn, radius } => {
+                heading += turn.to_radians();
+                if *radius == Radius::Scheduled {
+                    found.bend = Some(at);
+                }
+            }
+            Walk::TurnBy { back, turn_by, .. } => {
+                heading += if *back { -SLOPE } else { SLOPE };
+                let letter = turn_by.rise.chars().next().unwrap_or('D');
+                if found.rises.iter().all(|(known, _)| *known != letter) {
+                    found.rises.push((letter, found.legs.len()));
+                }
+            }
         }
     }
     found
@@ -72,7 +102,7 @@ pub fn shape(paper: &mut Paper, bar: &BarType, min: [f64; 2], max: [f64; 2], pen
     let room = [max[0] - min[0] - 8.0, max[1] - min[1] - 4.0];
     let scale = [(room[0] / span[0]).min(LONGEST), (room[1] / span[1]).min(LONGEST)];
     // A picture is not to scale: where a row is too low for the shape it is pressed, as long as its legs stay level and upright.
-    let scale = if outline.legs.iter().all(|l| (2.0 * l.heading).sin().abs() < 0.01) { scale } else { [scale[0].min(scale[1]); 2] };
+    let scale = if outline.legs.iter().any(Leg::is_sloping) { [scale[0].min(scale[1]); 2] } else { scale };
     let middle = [(min[0] + max[0]) / 2.0, (min[1] + max[1]) / 2.0];
     let map = |p: [f64; 2]| -> [f64; 2] { std::array::from_fn(|i| middle[i] + (p[i] - (low[i] + high[i]) / 2.0) * scale[i]) };
     let drawn: Vec<[f64; 2]> = outline.points.iter().map(|p| map(*p)).collect();
@@ -80,11 +110,38 @@ pub fn shape(paper: &mut Paper, bar: &BarType, min: [f64; 2], max: [f64; 2], pen
     paper.line(Layer::Edge, &bar.mark, &drawn, pen);
     let lettering = Lettering { layer: Layer::Text, mark: String::new(), height: LABEL };
     let within = Area::new(min, max).grown(-0.4);
+    rises(paper, &outline, map);
     let last = outline.legs.len().saturating_sub(1);
     for (i, leg) in outline.legs.iter().enumerate() {
         let end = if i == 0 { drawn.first() } else { drawn.last() }.filter(|_| (i == 0 || i == last) && last > 0);
-        let spots = spots(map(leg.middle), leg.heading, end.copied(), middle);
+        let spots = spots(map(leg.middle()), leg.heading, end.copied(), middle);
         paper.place(&lettering, spots, &leg.letter.to_string(), &within);
+    }
+    for (letter, at) in outline.rises.iter().filter_map(|(letter, i)| Some((*letter, rise(&outline, *i)?))) {
+        let [from, to] = at.map(map);
+        let spots = spots([from[0], (from[1] + to[1]) / 2.0], std::f64::consts::FRAC_PI_2, None, middle);
+        paper.place(&lettering, spots, &letter.to_string(), &within);
+    }
+    if let Some(bend) = outline.bend.map(map) {
+        paper.place(&lettering, spots(bend, SLOPE, None, middle), "R", &within);
+    }
+}
+
+/// The upright of an offset: from the level of one end of the sloping leg at `joint` to the other end.
+fn rise(outline: &Outline, joint: usize) -> Option<[[f64; 2]; 2]> {
+    let before = joint.checked_sub(1).and_then(|i| outline.legs.get(i)).filter(|l| l.is_sloping());
+    let leg = before.or_else(|| outline.legs.get(joint))?;
+    // The end that is not the joint is the higher one where a slope leads away from a level leg.
+    let [joint, end] = if before.is_some() { [leg.ends[1], leg.ends[0]] } else { leg.ends };
+    Some([[end[0], joint[1]], end])
+}
+
+/// Thin lines that show what an offset is measured between.
+fn rises(paper: &mut Paper, outline: &Outline, map: impl Fn([f64; 2]) -> [f64; 2]) {
+    for [foot, end] in outline.rises.iter().filter_map(|(_, i)| rise(outline, *i)) {
+        let (foot, end) = (map(foot), map(end));
+        paper.line(Layer::Dimension, "", &[foot, end], FINE);
+        paper.line(Layer::Dimension, "", &[[foot[0] - 1.2, foot[1]], [foot[0] + 1.2, foot[1]]], FINE);
     }
 }
 

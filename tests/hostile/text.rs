@@ -83,7 +83,7 @@ fn printed_files_open_whatever_the_text() {
         assert!(!lopdf::Document::load_mem(&file.bytes).unwrap().get_pages().is_empty(), "{}", file.name);
         opened += 1;
     }
-    assert_eq!(opened, 2);
+    assert_eq!(opened, 3);
 }
 
 #[test]

@@ -5,8 +5,9 @@ use crate::samples::{SAMPLES, sample};
 use crate::sheets::collisions::collisions;
 use slabwright::draw;
 use slabwright::issue_set::{IssueSet, detail};
-use slabwright::place::Set;
+use slabwright::place::{BarType, Set};
 use slabwright::scene::{Layer, Scene, Shape};
+use slabwright::tables::{ShapeCode, tables};
 
 fn pages(set: &IssueSet) -> Vec<Scene> {
     draw::schedule(&set.job, &set.model, &set.checks)
@@ -125,4 +126,35 @@ fn a_bar_of_shape_99_has_its_sketch_with_every_leg() {
     assert_eq!(in_row.iter().filter(|t| **t == "150°").count(), 2, "{in_row:?}");
     let drawn = page.items.iter().any(|i| i.mark == *mark && i.layer == Layer::Edge && matches!(&i.shape, Shape::Line { points, .. } if points.len() > 6));
     assert!(drawn, "the bar itself is drawn");
+}
+
+/// A sample that lists one invented bar of every shape code.
+fn with_every_shape() -> IssueSet {
+    let mut set = sample("mill-store");
+    let bars = &mut set.model.slabs[0].bars;
+    let model = bars[0].clone();
+    let bar_of = |(i, shape): (usize, &'static ShapeCode)| {
+        let dims = shape.measured.keys().filter_map(|l| l.chars().next()).zip([600, 260, 450, 240, 600, 300]).collect();
+        BarType { mark: format!("{:02}", i + 1), shape: &shape.code, dims, ..model.clone() }
+    };
+    *bars = tables().shapes.list.iter().enumerate().filter(|(_, s)| s.code != "99").map(bar_of).collect();
+    set
+}
+
+#[test]
+fn every_shape_has_a_picture_with_all_its_letters() {
+    let set = with_every_shape();
+    let pages = pages(&set);
+    for scene in &pages {
+        let met = collisions(scene);
+        assert!(met.is_empty(), "{}: {met:#?}", scene.description);
+    }
+    for bar in &set.model.slabs[0].bars {
+        let page = pages.iter().find(|s| s.rows.iter().any(|r| r.mark == bar.mark)).unwrap();
+        let row = page.rows.iter().find(|r| r.mark == bar.mark).unwrap();
+        let texts: Vec<&str> = texts(page).into_iter().filter(|(y, ..)| row.area[0][1] < *y && *y < row.area[1][1]).map(|(.., t)| t).collect();
+        for letter in bar.dims.keys() {
+            assert!(texts.contains(&letter.to_string().as_str()), "shape {}: {letter} is not in {texts:?}", bar.shape);
+        }
+    }
 }
