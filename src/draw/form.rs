@@ -63,6 +63,15 @@ pub fn fitted(text: &str, most: f64, room: f64) -> (f64, String) {
     }
 }
 
+/// As much of a text as fits on a line of labels, broken after a space or hyphen where there is one, and the rest.
+fn broken(text: &str, room: f64) -> (&str, &str) {
+    let ends = text.char_indices().map(|(i, c)| (i + c.len_utf8(), c));
+    let fitting: Vec<(usize, char)> = ends.take_while(|(end, _)| face().width(&text[..*end], LABEL) <= room).collect();
+    let at_joint = fitting.iter().rev().find(|(_, c)| matches!(c, ' ' | '-' | '/'));
+    let end = at_joint.or(fitting.last()).map_or(0, |(end, _)| *end);
+    (&text[..end], text[end..].trim_start())
+}
+
 /// Text in a cell from `x`, on the base line `y`: right up to the edge, or from the left; `most` high.
 pub fn cell(paper: &mut Paper, x: f64, width: f64, y: f64, text: &str, align: Align, most: f64) {
     let (height, text) = fitted(text, most, width - 4.0);
@@ -108,8 +117,15 @@ impl Form<'_> {
                 }
                 write(paper, LABEL, [x + 1.5, y + 4.9], Anchor::Start, name);
                 let at = x + 1.5 + labels[j] + 2.5;
-                let (height, text) = fitted(value, DATA, MIN[0] + LEFTS[j + 1] - at - 1.5);
-                write(paper, height, [at, y + 4.9], Anchor::Start, &text);
+                let room = MIN[0] + LEFTS[j + 1] - at - 1.5;
+                if face().width(value, LABEL) <= room {
+                    let (height, text) = fitted(value, DATA, room);
+                    write(paper, height, [at, y + 4.9], Anchor::Start, &text);
+                } else {
+                    let (first, rest) = broken(value, room);
+                    write(paper, LABEL, [at, y + 3.1], Anchor::Start, first);
+                    write(paper, LABEL, [at, y + 6.0], Anchor::Start, &fitted(rest, LABEL, room).1);
+                }
             }
         }
         rule(paper, [MIN[0], HEAD_TOP], [MAX[0], HEAD_TOP], BOLD);

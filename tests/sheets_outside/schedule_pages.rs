@@ -56,15 +56,42 @@ fn with_a_bar_of_shape_99() -> IssueSet {
     set
 }
 
+/// A sample with the longest texts that a job file may hold, in the widest letter; and a slab of the longest mark and the most members.
+fn with_the_longest_texts() -> IssueSet {
+    let mut set = sample("orchard-annexe");
+    let head = &mut set.job.head;
+    let wide = |letters: usize| "W".repeat(letters);
+    (head.number, head.drawing, head.revision) = (wide(20), wide(40), wide(6));
+    for text in [&mut head.project, &mut head.title, &mut head.schedule, &mut head.drawn_by, &mut head.checked_by] {
+        *text = wide(60);
+    }
+    let slab = &mut set.model.slabs[0];
+    (slab.mark, slab.members) = (wide(12), 99);
+    for bar in &mut slab.bars {
+        (bar.members, bar.length) = (99, 18_000);
+    }
+    set
+}
+
 #[test]
 fn no_text_of_a_schedule_meets_anything() {
-    let sets = SAMPLES.iter().map(|name| sample(name)).chain([many_marks(), with_a_bar_of_shape_99()]);
+    let sets = SAMPLES.iter().map(|name| sample(name)).chain([many_marks(), with_a_bar_of_shape_99(), with_the_longest_texts()]);
     for set in sets {
         for scene in pages(&set) {
             let met = collisions(&scene);
             assert!(met.is_empty(), "{}: {met:#?}", scene.description);
         }
     }
+}
+
+#[test]
+fn a_long_drawing_number_is_printed_in_full() {
+    let mut set = sample("mill-store");
+    set.job.head.drawing = "CFH-NNN-ZZ-01-DR-S-20-00201-BUILDING-TWO".into();
+    let pages = pages(&set);
+    let printed: Vec<&str> = texts(&pages[0]).into_iter().map(|(.., t)| t).collect();
+    let is_there = |at: usize| printed.contains(&&set.job.head.drawing[..at]) && printed.contains(&&set.job.head.drawing[at..]);
+    assert!((1..40).any(is_there), "{printed:?}");
 }
 
 #[test]
