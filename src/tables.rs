@@ -285,14 +285,15 @@ pub struct Sheets {
     pub border_left: f64,
     pub border: f64,
     pub frame_pen: f64,
+    /// Lines between the fields of the border, mm.
+    pub field_pen: f64,
     pub scales: Vec<u32>,
     pub source: String,
     /// Every text height a sheet may use: the series of ISO 3098, mm.
     pub heights: Vec<f64>,
     /// Every line width a sheet may use: the series of ISO 128, mm.
     pub widths: Vec<f64>,
-    /// What a sheet printed at half size may not go under: text height and line width, mm.
-    pub half_size: [f64; 2],
+    pub half_size: HalfSize,
     #[serde(rename = "size")]
     pub sizes: Vec<SheetSize>,
 }
@@ -306,6 +307,18 @@ pub struct TextHeights {
     pub call_out: f64,
     pub view: f64,
     pub number: f64,
+}
+
+/// What has to be left of a sheet when it is printed smaller, mm on the print.
+#[derive(Debug, Deserialize)]
+#[serde(deny_unknown_fields)]
+pub struct HalfSize {
+    pub sheet: String,
+    pub printed: String,
+    pub factor: f64,
+    pub text: f64,
+    pub line: f64,
+    pub source: String,
 }
 
 #[derive(Debug, Deserialize)]

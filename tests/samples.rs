@@ -6,7 +6,8 @@ use slabwright::write::Artifact;
 use std::path::{Path, PathBuf};
 use std::process::Command;
 
-pub const SAMPLES: [&str; 4] = ["mill-store", "ferry-hall", "harbour-shed", "orchard-annexe"];
+/// Smallest first.
+pub const SAMPLES: [&str; 6] = ["gate-landing", "mill-store", "ferry-hall", "orchard-annexe", "harbour-shed", "rope-walk"];
 
 pub fn root() -> PathBuf {
     PathBuf::from(env!("CARGO_MANIFEST_DIR"))

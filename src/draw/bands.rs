@@ -115,7 +115,7 @@ pub struct Column<'a> {
 }
 
 /// Draws a column of bands; returns the titles of its views with their places.
-pub fn draw(paper: &mut Paper, v: &View, subject: &Subject, column: &Column) -> Vec<(String, [f64; 2])> {
+pub fn draw(paper: &mut Paper, v: &View, subject: &Subject, column: &Column) -> Vec<(String, Area)> {
     let Column { bands, gap, top, spread, neighbours, has_across } = *column;
     heads(paper, v, subject, top);
     let x = v.x(v.low) - margin(v) + 2.0;
@@ -123,10 +123,10 @@ pub fn draw(paper: &mut Paper, v: &View, subject: &Subject, column: &Column) -> 
     let mut y = top + heads_height(v, subject);
     for band in bands {
         let (title, note) = name(subject, v, gap, *band);
-        let area = view_title(paper, v, x, y, &title, &note);
-        titles.push((title, [area.min[0], area.min[1]]));
         let at = y + title_height(v);
         let end = y + band_height(subject, v, gap, *band);
+        let area = view_title(paper, v, x, y, &title, &note);
+        titles.push((title, Area::new([x - 2.0, area.min[1]], [v.x(v.high) + margin(v), end + spread])));
         match band {
             Band::BottomPlan | Band::TopPlan => {
                 let face = if *band == Band::BottomPlan { Face::Bottom } else { Face::Top };
@@ -170,10 +170,10 @@ pub fn across_size(subject: &Subject, v: &View) -> [f64; 2] {
 }
 
 /// The section across the span with both edges, in the first span shown; returns its title with its place.
-pub fn across(paper: &mut Paper, v: &View, subject: &Subject, low: f64, corner: [f64; 2]) -> (String, [f64; 2]) {
+pub fn across(paper: &mut Paper, v: &View, subject: &Subject, low: f64, corner: [f64; 2]) -> (String, Area) {
     let title = ACROSS.to_string();
     let levels = level_scale(v.scale);
-    let area = view_title(paper, v, corner[0], corner[1], &title, &format!("1:{}, levels 1:{levels}", v.scale));
+    view_title(paper, v, corner[0], corner[1], &title, &format!("1:{}, levels 1:{levels}", v.scale));
     let width = subject.slab.width.value;
     let left = corner[0] + 5.0 * v.note;
     let top = corner[1] + title_height(v) + section_drop(subject, v) + 1.25 * v.note;
@@ -185,7 +185,7 @@ pub fn across(paper: &mut Paper, v: &View, subject: &Subject, low: f64, corner: 
     let h = subject.slab.thickness.value;
     let right = cut.x(width);
     super::dimension::upright(paper, v, right + 5.0, cut.y(h), cut.y(0.0), right + 1.0, &crate::base::mm(h));
-    (title, [area.min[0], area.min[1]])
+    (title, within)
 }
 
 /// Where the section across is cut: in the middle of the first span shown.

@@ -1,5 +1,4 @@
-//! Which sheets a slab stands on: the largest scale first, for each the smallest sheet, whole before in parts, until every text has
-//! a place of its own. What does not fit goes on a larger sheet, then at a smaller scale, then over several sheets cut at supports.
+//! Which sheets a slab stands on: large scales and small sheets first, whole before in parts, until every text has a place of its own. What does not fit goes on a larger sheet, then at a smaller scale, then over several sheets cut at supports.
 
 use super::bands::{self, Band, Gap, Neighbour, PAIRED, STACKED, margin};
 use super::plan_view::BREAK;
@@ -10,6 +9,7 @@ use crate::job::Job;
 use crate::place::BarModel;
 use crate::scene::Scene;
 use crate::tables::{SheetSize, tables};
+use itertools::Itertools;
 
 /// Every sheet of a job.
 pub fn sheets(job: &Job, model: &BarModel, checks: &[Vec<Check>]) -> Vec<Scene> {
@@ -79,6 +79,23 @@ fn draw(all: &Frame, subject: &Subject, choices: &[Choice], first: usize) -> Vec
     drawn
 }
 
+/// What weighs against a sheet: small scales are hard to read, large sheets hard to handle. An A3 at 1:50 comes before an A1 at 1:20,
+/// an A1 at 1:50 before an A3 at 1:100 (our own judgement).
+fn burden(size: &SheetSize, scale: f64) -> f64 {
+    let of_scale = match scale as u32 {
+        0..=20 => 0.0,
+        21..=25 => 0.2,
+        26..=50 => 1.0,
+        _ => 3.0,
+    };
+    let of_size = match size.name.as_str() {
+        "A3" => 0.0,
+        "A2" => 0.9,
+        _ => 1.9,
+    };
+    of_scale + of_size
+}
+
 /// Ways to set a slab on sheets, the best first, each once.
 fn ways(job: &Job, subject: &Subject, size: Option<&str>) -> Vec<Vec<Choice>> {
     let all = &tables().sheets;
@@ -91,11 +108,11 @@ fn ways(job: &Job, subject: &Subject, size: Option<&str>) -> Vec<Vec<Choice>> {
     let st = &subject.model.stations;
     let (low, high) = (st.start.min(st.supports[0].centre), st.end.max(st.supports[st.last()].centre));
     let mut ways = Vec::new();
-    for scale in &scales {
-        for size in &sizes {
-            for columns in [STACKED, PAIRED] {
-                ways.push(vec![Choice { size, scale: *scale, low, high, gap: None, columns }]);
-            }
+    let mut whole: Vec<(&&'static SheetSize, f64)> = sizes.iter().cartesian_product(scales.iter().copied()).collect();
+    whole.sort_by(|a, b| burden(a.0, a.1).total_cmp(&burden(b.0, b.1)));
+    for (size, scale) in whole {
+        for columns in [STACKED, PAIRED] {
+            ways.push(vec![Choice { size, scale, low, high, gap: None, columns }]);
         }
     }
     let Some(size) = sizes.last() else { return ways };

@@ -28,7 +28,7 @@ struct Corner {
 }
 
 /// The different ends and edges of a slab; those alike are drawn once.
-fn corners(subject: &Subject) -> Vec<Corner> {
+fn corners(subject: &Subject, v: &View) -> Vec<Corner> {
     let st = &subject.model.stations;
     let width = subject.slab.width.value;
     let middle = (st.spans[0].left_face + st.spans[0].right_face) / 2.0;
@@ -37,7 +37,8 @@ fn corners(subject: &Subject) -> Vec<Corner> {
     let corner = |axis, at_start, at, title: String| Corner { axis, at_start, at, title, note: String::new() };
     let mut list = Vec::new();
     let ends = [corner(0, true, 0.3 * width, format!("End {first}")), corner(0, false, 0.3 * width, format!("End {last}"))];
-    let edges = [corner(1, true, middle, "Near edge".into()), corner(1, false, middle, "Far edge".into())];
+    let kind = |side: usize| subject.slab.edges[side].word();
+    let edges = [corner(1, true, middle, format!("Near edge: {}", kind(0))), corner(1, false, middle, format!("Far edge: {}", kind(1)))];
     for [mut one, other] in [ends, edges] {
         if signature(subject, &one) == signature(subject, &other) {
             let other = if one.axis == 0 { format!("end {last}") } else { "far edge".into() };
@@ -46,6 +47,11 @@ fn corners(subject: &Subject) -> Vec<Corner> {
         } else {
             list.extend([one, other]);
         }
+    }
+    // Of a slab in parts, each sheet has the end that it shows.
+    let shows = |c: &Corner| c.axis == 1 || v.shows(if c.at_start { st.start.max(st.supports[0].centre) } else { st.end.min(st.supports[st.last()].centre) });
+    if list.iter().any(&shows) && list.iter().filter(|c| c.axis == 0).count() == 2 {
+        list.retain(shows);
     }
     for corner in list.iter_mut().filter(|c| c.axis == 1) {
         corner.note.push_str(&format!("; cut in span {first}-{}", grids.get(1).map_or("", String::as_str)));
@@ -110,7 +116,7 @@ pub struct CloseUps {
 
 impl CloseUps {
     pub fn in_area(subject: &Subject, v: &View, width: f64) -> Option<CloseUps> {
-        let corners = corners(subject);
+        let corners = corners(subject, v);
         let count = corners.len();
         let thickness = subject.slab.thickness.value;
         let line = v.note + 3.2;
@@ -149,7 +155,7 @@ impl CloseUps {
         let pitch = self.pitch(area);
         let room = area.width() / self.columns as f64;
         let spare = 10.0 * v.note;
-        for (i, corner) in corners(subject).iter().enumerate() {
+        for (i, corner) in corners(subject, v).iter().enumerate() {
             let (row, column) = (i / self.columns, i % self.columns);
             let left = area.min[0] + column as f64 * room;
             let top = area.min[1] + row as f64 * pitch;

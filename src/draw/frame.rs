@@ -24,7 +24,6 @@ pub fn space(size: &SheetSize) -> Area {
 pub fn frame(paper: &mut Paper, size: &SheetSize) {
     let s = &tables().sheets;
     let area = space(size);
-    let thin = Pen::solid(size.pens.concrete);
     paper.outline(Layer::Frame, &[area.min, [area.max[0], area.min[1]], area.max, [area.min[0], area.max[1]]], Pen::solid(s.frame_pen));
     // Trim marks in the corners.
     for (x, y) in [(0.0, 0.0), (size.width, 0.0), (0.0, size.height), (size.width, size.height)] {
@@ -40,7 +39,7 @@ pub fn frame(paper: &mut Paper, size: &SheetSize) {
     ] {
         paper.scene.line(Layer::Frame, &[a, b], Pen::solid(s.frame_pen));
     }
-    fields(paper, size, &area, thin);
+    fields(paper, size, &area, Pen::solid(s.field_pen));
 }
 
 /// Grid fields of 50 mm from the centring marks outwards: letters from the top, without I and O, numerals from the left.

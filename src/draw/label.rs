@@ -56,6 +56,26 @@ struct Standing {
     ids: Vec<Id>,
 }
 
+impl Paper {
+    /// Writes a text at once, at the cheapest of these places.
+    pub fn place(&mut self, lettering: &Lettering, spots: impl IntoIterator<Item = Spot>, text: &str, within: &Area) {
+        let label = Label {
+            lettering: lettering.clone(),
+            text: text.into(),
+            near: spots.into_iter().collect(),
+            target: None,
+            reach: 0.0,
+            within: *within,
+            leads: false,
+            order: 0,
+            leader_pen: Pen::solid(0.0),
+        };
+        if let Some(place) = best(self, &label, TEXT) {
+            self.text(lettering, place.spot, text);
+        }
+    }
+}
+
 /// Sets every waiting label of a sheet.
 pub fn settle(paper: &mut Paper) -> Vec<Placed> {
     let mut labels = std::mem::take(&mut paper.labels);

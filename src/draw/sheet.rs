@@ -1,6 +1,7 @@
 //! One reinforcement sheet: the bands of a slab or a part of it, close-ups, the column beside them, the frame round all.
 
 use super::bands::{self, Band, Gap, Neighbour, level_scale, margin};
+use super::bookmarks;
 use super::close_up::CloseUps;
 use super::column;
 use super::frame::{self, Title};
@@ -148,8 +149,8 @@ pub fn sheet(all: &Frame, subject: &Subject, choice: &Choice, number: usize, nei
     }
     let (mut scene, unplaced) = paper.finish();
     describe(&mut scene, all, subject, choice, number);
-    scene.bookmarks = super::bookmarks::bookmarks(&scene, &format!("Sheet {number}: slab {}", subject.slab.mark), &views);
-    scene.roles = subject.model.bars.iter().map(|b| (b.mark.clone(), b.role.name().to_string())).collect();
+    bookmarks::name_marks(&mut scene, subject.model);
+    scene.bookmarks = bookmarks::bookmarks(&scene, &format!("Sheet {number}: slab {}", subject.slab.mark), &views);
     Some(Drawn { scene, unplaced })
 }
 

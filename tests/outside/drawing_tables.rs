@@ -25,16 +25,16 @@ const WIDTHS: [f64; 9] = [0.13, 0.18, 0.25, 0.35, 0.5, 0.7, 1.0, 1.4, 2.0];
 const SCALES: [u32; 7] = [1, 2, 5, 10, 20, 50, 100];
 
 /// ISO 7200 Table 1 to 3: what the field is called here, a value of the recommended number of characters. High: two listings agree.
-/// The legal owner, which it asks for too, has no place in a job file.
+/// The legal owner, which it asks for too, has an empty field: it is not in a job file.
 const FIELDS_OF_THE_TITLE_BLOCK: [(&str, &str, usize); 8] = [
     ("Drawing number", "K4170-RF-20-0201", 16),
     ("Revision", "P2", 2),
-    ("Date", "2026-05-18", 10),
+    ("Date of issue", "2026-05-18", 10),
     ("Sheet", "1 of", 4),
     ("Title", "First floor, grids B to E", 25),
     ("Approved", "", 20),
     ("Drawn", "Alexandra R. Person-", 20),
-    ("Document", "Reinforcement drawing", 30),
+    ("Document type", "Reinforcement drawing", 30),
 ];
 
 fn sheets() -> Vec<Scene> {
@@ -75,14 +75,18 @@ fn fields_of_the_border_are_about_fifty_millimetres_and_even_in_number() {
 
 #[test]
 fn text_heights_are_of_the_iso_3098_series_and_none_read_is_under_two_and_a_half() {
-    let text = &tables().sheets.text;
-    let heights = [text.note, text.call_out, text.view, text.number];
-    for height in heights {
-        // 2.5 mm is the least to be read. High: three summaries.
-        assert!(HEIGHTS.contains(&height) && height >= 2.5, "{height}");
+    assert_eq!(tables().sheets.heights, HEIGHTS);
+    assert_eq!(tables().sheets.widths, WIDTHS);
+    for size in &tables().sheets.sizes {
+        let text = &size.text;
+        let heights = [text.note, text.call_out, text.view, text.number];
+        for height in heights {
+            // 2.5 mm is the least to be read. High: three summaries.
+            assert!(HEIGHTS.contains(&height) && height >= 2.5, "{height}");
+        }
+        // No rank under the last, and no more than two steps of root two over it.
+        assert!(heights.windows(2).all(|w| w[1] >= w[0] && w[1] / w[0] < 2.1), "{heights:?}");
     }
-    // Each rank no more than one step of root two over the last.
-    assert!(heights.windows(2).all(|w| w[1] >= w[0] && w[1] / w[0] < 1.5), "{heights:?}");
     for scene in sheets() {
         for item in &scene.items {
             if let Shape::Text { height, text, .. } = &item.shape {
@@ -162,7 +166,7 @@ fn dimensions_of_a_sheet_have_one_height_of_text_and_no_unit() {
 }
 
 #[test]
-#[ignore = "until the letters of the border are 3.5 mm and its lines 0.35 mm on every size"]
+
 fn letters_and_lines_of_the_border_are_those_of_iso_5457() {
     // Characters of 3.5 mm, lines of 0.35 mm. Medium: one summary.
     let t = &tables().sheets;
