@@ -140,7 +140,7 @@ fn title_block_and_schedule_hold_the_fields_of_iso_7200_at_their_lengths() {
         assert!(value.is_empty() || written.iter().any(is_read), "{label}: {value:?} is not written at 2.5 mm or more");
     }
     let pages = slabwright::draw::schedule(&set.job, &set.model, &set.checks);
-    for label in ["Drawing number", "Title", "Drawn", "Revision", "Date"] {
+    for label in ["Drawing number", "Title", "Drawn", "Revision", "Date of issue"] {
         let is_read = |(text, height): &(String, f64)| *text == value(label) && *height >= 2.5;
         assert!(texts(&pages[0]).iter().any(is_read), "the schedule does not say {label} {:?}", value(label));
     }
