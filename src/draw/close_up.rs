@@ -31,7 +31,8 @@ struct Corner {
 fn corners(subject: &Subject, v: &View) -> Vec<Corner> {
     let st = &subject.model.stations;
     let width = subject.slab.width.value;
-    let middle = (st.spans[0].left_face + st.spans[0].right_face) / 2.0;
+    let middle = super::bands::across_station(subject, v.low);
+    let span = st.spans.iter().position(|s| s.left_face < middle && middle < s.right_face).unwrap_or(0);
     let grids = &subject.model.grids;
     let (first, last) = (grids.first().cloned().unwrap_or_default(), grids.last().cloned().unwrap_or_default());
     let corner = |axis, at_start, at, title: String| Corner { axis, at_start, at, title, note: String::new() };
@@ -53,8 +54,9 @@ fn corners(subject: &Subject, v: &View) -> Vec<Corner> {
     if list.iter().any(&shows) && list.iter().filter(|c| c.axis == 0).count() == 2 {
         list.retain(shows);
     }
+    let name = |at: usize| grids.get(at).map_or("", String::as_str);
     for corner in list.iter_mut().filter(|c| c.axis == 1) {
-        corner.note.push_str(&format!("; cut in span {first}-{}", grids.get(1).map_or("", String::as_str)));
+        corner.note.push_str(&format!("; cut in span {}-{}", name(span), name(span + 1)));
     }
     list
 }

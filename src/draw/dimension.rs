@@ -14,7 +14,7 @@ pub fn tick(paper: &mut Paper, layer: Layer, mark: &str, at: [f64; 2], width: f6
 
 /// A figure that waits for one of these places, or for one near by with a leader to its dimension.
 pub fn figure(paper: &mut Paper, v: &View, near: Vec<Spot>, target: [f64; 2], text: &str) {
-    let within = paper.sheet().grown(-11.0);
+    let within = paper.room;
     paper.label(Label {
         lettering: Lettering::new(Layer::Dimension, v.note),
         text: text.into(),

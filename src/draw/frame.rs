@@ -24,6 +24,7 @@ pub fn space(size: &SheetSize) -> Area {
 pub fn frame(paper: &mut Paper, size: &SheetSize) {
     let s = &tables().sheets;
     let area = space(size);
+    paper.room = area.grown(-1.0);
     paper.outline(Layer::Frame, &[area.min, [area.max[0], area.min[1]], area.max, [area.min[0], area.max[1]]], Pen::solid(s.frame_pen));
     // Trim marks in the corners.
     for (x, y) in [(0.0, 0.0), (size.width, 0.0), (0.0, size.height), (size.width, size.height)] {

@@ -103,16 +103,17 @@ pub fn match_line(paper: &mut Paper, v: &View, station: f64, grid: &str, sheet: 
     let out = if station > (v.low + v.high) / 2.0 { 1.0 } else { -1.0 };
     let pen = Pen { width: v.pens.concrete, dash: Dash::Chain };
     paper.soft_line(Layer::Grid, "", &[[x + out * 0.8, top], [x + out * 0.8, bottom]], pen);
-    let at = if out < 0.0 { x - 3.0 } else { x + 3.0 + v.note };
-    let near = (0..120).map(|i| Spot::upright([at, top + 30.0 + 4.0 * f64::from(i)], Anchor::Middle)).filter(|s| s.at[1] < bottom - 10.0);
+    let beside = |by: f64| if out < 0.0 { x - by } else { x + by + v.note };
+    let down = |by: f64| (0..120).map(move |i| (by, top + 30.0 + 4.0 * f64::from(i))).filter(|(_, y)| *y < bottom - 10.0);
+    let near = [3.0, 8.0, 13.0].into_iter().flat_map(down).map(|(by, y)| Spot::upright([beside(by), y], Anchor::Middle));
     paper.label(Label {
         lettering: Lettering::new(Layer::Text, v.note),
-        text: format!("match line, grid {grid}: goes on over sheet {sheet}"),
+        text: format!("match line {grid}: see sheet {sheet}"),
         near: near.collect(),
-        target: None,
-        reach: 0.0,
+        target: Some([x + out * 0.8, (top + bottom) / 2.0]),
+        reach: 90.0,
         leads: false,
-        within: paper.sheet().grown(-11.0),
+        within: paper.room,
         order: 3,
         leader_pen: Pen::solid(v.pens.thin),
     });

@@ -39,6 +39,10 @@ const CLEAR: f64 = 0.45;
 const MEETS: f64 = 300.0;
 const TEXT: f64 = 1000.0;
 const OUTSIDE: f64 = 5000.0;
+/// Radius of the dot at the end of a leader, mm.
+pub(super) const DOT: f64 = 0.5;
+/// What it costs to stand in line with another text so near that the two read as one.
+const IN_LINE: f64 = 45.0;
 /// How often labels are moved again.
 const ROUNDS: usize = 12;
 /// With more texts than this without a place, none is moved.
@@ -158,8 +162,18 @@ fn improve(paper: &mut Paper, labels: &[Label], standing: &mut [Option<Standing>
 
 fn stand(paper: &mut Paper, label: &Label, place: Place) -> Standing {
     let mut ids = vec![paper.index.add_box(label.lettering.area(&place.spot, &label.text), Firmness::Text)];
-    ids.extend(place.leader.map(|[a, b]| paper.index.add_piece(a, b, Firmness::Leader)));
+    if let Some([a, b]) = place.leader {
+        ids.push(paper.index.add_piece(a, b, Firmness::Leader));
+        let dot = dot(b);
+        ids.push(paper.index.add_piece([dot.min[0], b[1]], [dot.max[0], b[1]], Firmness::Leader));
+        ids.push(paper.index.add_piece([b[0], dot.min[1]], [b[0], dot.max[1]], Firmness::Leader));
+    }
     Standing { place, ids }
+}
+
+/// The dot at the end of a leader.
+fn dot(at: [f64; 2]) -> Area {
+    Area::new(at, at).grown(DOT)
 }
 
 fn lift(paper: &mut Paper, standing: &Standing) {
@@ -240,16 +254,31 @@ fn foot(area: &Area, target: [f64; 2], height: f64) -> [f64; 2] {
     at
 }
 
+/// A text's box with the paper before and behind it that must be clear, so that two texts in line are not read as one.
+fn along(area: &Area, height: f64, upward: bool) -> Area {
+    let by = 1.3 * height;
+    if upward {
+        Area::new([area.min[0], area.min[1] - by], [area.max[0], area.max[1] + by])
+    } else {
+        Area::new([area.min[0] - by, area.min[1]], [area.max[0] + by, area.max[1]])
+    }
+}
+
 /// What a place costs: what its box and its leader meet, and how long the leader is.
 fn price(paper: &Paper, label: &Label, spot: Spot, leader: Option<[[f64; 2]; 2]>, text: f64) -> f64 {
     let area = label.lettering.area(&spot, &label.text);
     let mut cost = if label.within.holds(&area) { 0.0 } else { OUTSIDE };
     let met = paper.index.met_by_box(&area.grown(CLEAR));
+    cost += IN_LINE * paper.index.texts_met(&along(&area, label.lettering.height, spot.upward)).len().saturating_sub(met.texts) as f64;
     cost += text * met.texts as f64 + MEETS * (met.firm + met.leaders) as f64 + 3.0 * met.soft as f64;
     if let Some([from, to]) = leader {
         let length = (to[0] - from[0]).hypot(to[1] - from[1]);
         let met = paper.index.met_by_piece(from, to);
-        cost += 0.5 * length + text * met.texts as f64 + 40.0 * met.leaders as f64 + 5.0 * met.firm as f64 + met.soft as f64;
+        cost += 0.5 * length
+            + text * (met.texts + paper.index.met_by_box(&dot(to)).texts) as f64
+            + 40.0 * met.leaders as f64
+            + 5.0 * met.firm as f64
+            + met.soft as f64;
     }
     cost
 }

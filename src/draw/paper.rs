@@ -47,6 +47,8 @@ impl Lettering {
 
 pub struct Paper {
     pub scene: Scene,
+    /// Paper that texts of the drawing may use: the space inside the frame.
+    pub room: Area,
     pub(super) index: Index,
     pub(super) labels: Vec<Label>,
     /// Items of the scene that are interrupted where a text stands on them.
@@ -55,11 +57,8 @@ pub struct Paper {
 
 impl Paper {
     pub fn new(width: f64, height: f64) -> Paper {
-        Paper { scene: Scene { width, height, ..Scene::default() }, index: Index::new(width, height), labels: Vec::new(), soft: Vec::new() }
-    }
-
-    pub fn sheet(&self) -> Area {
-        Area::new([0.0, 0.0], [self.scene.width, self.scene.height])
+        let room = Area::new([0.0, 0.0], [width, height]);
+        Paper { scene: Scene { width, height, ..Scene::default() }, room, index: Index::new(width, height), labels: Vec::new(), soft: Vec::new() }
     }
 
     fn keep_off(&mut self, points: &[[f64; 2]], firmness: Firmness) {
@@ -138,7 +137,7 @@ impl Paper {
             if let Some([from, to]) = leader {
                 let pen = label.leader_pen;
                 self.scene.push(Layer::CallOut, &label.lettering.mark, Shape::Line { points: vec![from, to], closed: false, pen });
-                self.scene.push(Layer::CallOut, &label.lettering.mark, Shape::Circle { centre: to, radius: 0.5, pen: None, filled: true });
+                self.scene.push(Layer::CallOut, &label.lettering.mark, Shape::Circle { centre: to, radius: super::label::DOT, pen: None, filled: true });
             }
             self.write(&label.lettering, spot, &label.text);
         }

@@ -203,7 +203,7 @@ impl PlanView<'_> {
                 target: None,
                 reach: 0.0,
                 leads: false,
-                within: paper.sheet().grown(-11.0),
+                within: paper.room,
                 order: 3,
                 leader_pen: Pen::solid(v.pens.thin),
             });

@@ -115,7 +115,7 @@ fn bar(paper: &mut Paper, v: &View, occurrence: &Occurrence, y: f64) {
         target: Some([v.x((from + to) / 2.0), y]),
         reach: 20.0,
         leads: false,
-        within: paper.sheet().grown(-11.0),
+        within: paper.room,
         order: 1,
         leader_pen: Pen::solid(v.pens.thin),
     });

@@ -51,7 +51,7 @@ pub fn column_width(size: &SheetSize) -> f64 {
 /// Room for the bands and close-ups on a sheet.
 pub fn band_area(size: &SheetSize) -> Area {
     let space = frame::space(size);
-    Area::new([space.min[0] + 4.0, space.min[1] + 6.0], [space.max[0] - column_width(size) - 4.0, space.max[1] - 6.0])
+    Area::new([space.min[0] + 6.0, space.min[1] + 6.0], [space.max[0] - column_width(size) - 4.0, space.max[1] - 6.0])
 }
 
 /// Width of the widest column of bands, mm.
@@ -121,7 +121,7 @@ pub fn sheet(all: &Frame, subject: &Subject, choice: &Choice, number: usize, nei
     let left = space.max[0] - column_width(size);
     let top = frame::title_block(&mut paper, job, &title, column_width(size));
     paper.line(Layer::Frame, "", &[[left, space.min[1]], [left, top]], Pen::solid(size.pens.concrete));
-    let column = Area::new([left + 4.0, space.min[1] + 4.0], [space.max[0] - 4.0, top - 2.0]);
+    let column = Area::new([left + 4.0, space.min[1] + 4.0], [space.max[0] - 5.5, top - 2.0]);
     let bottom = notes::stamp(job, all.checks).map_or(column.max[1], |text| column::stamp(&mut paper, &measure, &text, &column, top));
     let (below, in_column) = fill_column(&mut paper, all, subject, choice, &measure, &column, &layout)?;
     if below > bottom {

@@ -22,6 +22,9 @@ fn wide_range(seed: u64) -> Draft {
 
 fn detailed(seed: u64) -> Option<IssueSet> {
     let text = wide_range(seed).text(None);
+    if std::env::var("DUMP").is_ok() {
+        std::fs::write(format!("/tmp/jobs/{seed}.toml"), &text).unwrap();
+    }
     detail(text.as_bytes(), &|_: &str| Err("no files here".into())).set
 }
 
