@@ -25,3 +25,10 @@ export SLABWRIGHT_PYTHON="$PWD/$python" SLABWRIGHT_TOOLS=1
 cargo fmt --check
 cargo clippy --locked --all-targets -- -D warnings
 cargo test --locked
+
+# The gallery of the README: the first sheet of every sample as a picture, from the outputs that the tests found up to date.
+mkdir -p samples/pictures
+for job in samples/*.toml; do
+  name="$(basename "$job" .toml)"
+  pdftoppm -r 50 -gray -png -singlefile "samples/$name/"*-sheet.pdf "samples/pictures/$name"
+done

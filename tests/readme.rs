@@ -70,3 +70,13 @@ fn the_picture_and_the_samples_are_there() {
         assert!(root().join(&target).exists(), "{target} is linked and not there");
     }
 }
+
+#[test]
+fn the_gallery_shows_every_sample_smallest_first() {
+    let text = readme();
+    let places: Vec<usize> = crate::samples::SAMPLES.iter().map(|name| text.find(&format!("](samples/pictures/{name}.png)")).expect(name)).collect();
+    assert!(places.is_sorted(), "{places:?}");
+    let steel = |name: &str| crate::samples::sample(name).model.total_kg();
+    let masses: Vec<f64> = crate::samples::SAMPLES.iter().map(|name| steel(name)).collect();
+    assert!(masses.is_sorted(), "{masses:?}");
+}

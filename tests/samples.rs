@@ -6,8 +6,8 @@ use slabwright::write::Artifact;
 use std::path::{Path, PathBuf};
 use std::process::Command;
 
-/// Smallest first.
-pub const SAMPLES: [&str; 6] = ["gate-landing", "mill-store", "ferry-hall", "orchard-annexe", "harbour-shed", "rope-walk"];
+/// By their steel, smallest first.
+pub const SAMPLES: [&str; 6] = ["gate-landing", "mill-store", "orchard-annexe", "ferry-hall", "harbour-shed", "rope-walk"];
 
 pub fn root() -> PathBuf {
     PathBuf::from(env!("CARGO_MANIFEST_DIR"))

@@ -22,9 +22,6 @@ fn wide_range(seed: u64) -> Draft {
 
 fn detailed(seed: u64) -> Option<IssueSet> {
     let text = wide_range(seed).text(None);
-    if std::env::var("DUMP").is_ok() {
-        std::fs::write(format!("/tmp/jobs/{seed}.toml"), &text).unwrap();
-    }
     detail(text.as_bytes(), &|_: &str| Err("no files here".into())).set
 }
 
@@ -62,4 +59,22 @@ fn no_text_of_500_generated_jobs_meets_anything() {
     );
     assert!(results.len() as u64 == jobs, "every generated job is valid");
     assert!(found.is_empty(), "{:#?}", &found[..found.len().min(60)]);
+}
+
+#[test]
+fn the_generated_jobs_reach_the_whole_range() {
+    let drafts: Vec<Draft> = (0..JOBS).map(wide_range).collect();
+    let slabs = || drafts.iter().flat_map(|d| &d.slabs);
+    let spans: std::collections::BTreeSet<usize> = slabs().map(|s| s.spans.len()).collect();
+    assert_eq!(spans.into_iter().collect::<Vec<_>>(), (1..=20).collect::<Vec<_>>());
+    let widths = || slabs().map(|s| s.width);
+    assert!(widths().min() <= Some(2200) && widths().max() > Some(39_000), "{:?} to {:?}", widths().min(), widths().max());
+    let lengths = || slabs().flat_map(|s| s.spans.iter().map(|b| b.length));
+    assert!(lengths().min() == Some(1500) && lengths().max() > Some(8950));
+    for edge in ["free", "wall", "beam", "joint"] {
+        assert!(slabs().any(|s| s.edges[0] == edge) && slabs().any(|s| s.edges[1] == edge));
+    }
+    for way in ["auto", "full", "alternate", "reversed"] {
+        assert!(slabs().any(|s| s.arrangement == way));
+    }
 }
