@@ -1,6 +1,6 @@
 //! Bars across the slab in plan: one bar of each set, the level line over its zone, laps of pieces dimensioned.
 
-use super::dimension::{figure, tick};
+use super::dimension::{figure, running_figure, tick};
 use super::paper::{Paper, Spot};
 use super::plan_view::{Face, PlanView, along_level, along_upright};
 use super::view::Occurrence;
@@ -28,14 +28,21 @@ impl PlanView<'_> {
         let (y_low, y_high) = set.axis.iter().map(|p| p[1]).fold((f64::INFINITY, f64::NEG_INFINITY), |(a, b), y| (a.min(y), b.max(y)));
         for x in if held && last > first { vec![first, last] } else { vec![station] } {
             let pieces = pieces_at(occurrence, x);
-            // Pieces in contact are drawn apart, not to scale, so that the lap can be seen.
-            let drawn: Vec<(f64, (f64, f64))> = pieces.iter().enumerate().map(|(i, p)| (v.x(x) + if i % 2 == 1 { 1.4 } else { 0.0 }, *p)).collect();
+            // Pieces in contact are drawn apart, not to scale, so that the lap can be seen: towards the middle of the slab.
+            let st = &self.subject.model.stations;
+            let inward = if x < (st.start + st.end) / 2.0 { 1.4 } else { -1.4 };
+            let drawn: Vec<(f64, (f64, f64))> = pieces.iter().enumerate().map(|(i, p)| (v.x(x) + if i % 2 == 1 { inward } else { 0.0 }, *p)).collect();
             for (at, piece) in &drawn {
                 paper.line(layer, mark, &[[*at, self.y(piece.1)], [*at, self.y(piece.0)]], Pen::solid(width));
             }
             if occurrence.first && x == station {
-                for pair in drawn.windows(2) {
-                    self.lap(paper, pair[0].0.max(pair[1].0) + 2.2, pair[1].1.0, pair[0].1.1);
+                let laps: Vec<f64> = drawn.windows(2).map(|pair| pair[0].1.1 - pair[1].1.0).collect();
+                let is_one = laps.iter().all(|lap| (lap - laps[0]).abs() < 1.0);
+                // Equal laps of one line are dimensioned once.
+                for pair in drawn.windows(2).take(if is_one { 1 } else { laps.len() }) {
+                    let at = if inward > 0.0 { pair[0].0.max(pair[1].0) + 2.2 } else { pair[0].0.min(pair[1].0) - 2.2 };
+                    let word = if is_one && laps.len() > 1 { "laps" } else { "lap" };
+                    self.lap(paper, &format!("{mark} {word}"), at, pair[1].1.0, pair[0].1.1);
                 }
             }
         }
@@ -52,25 +59,45 @@ impl PlanView<'_> {
             (false, Face::Top) => self.down(0.86),
         };
         let thin = Pen::solid(v.pens.thin);
-        paper.soft_line(Layer::CallOut, mark, &[[v.x(first), y], [v.x(last), y]], thin);
-        for x in [v.x(first), v.x(last)] {
-            tick(paper, Layer::CallOut, mark, [x, y], v.pens.thin);
-        }
+        self.located(paper, mark, first, last, y);
         paper.ring(Layer::CallOut, mark, [x, y], 0.9, thin);
         let mut spots = along_level(v.x(first), v.x(last), y, v.call_out);
         spots.extend(along_upright(x, y0, y1, v.call_out, true));
         self.call_out(paper, spots, [x, y], occurrence);
     }
 
+    /// The level line over a zone from its first to its last bar, both located from the grids nearest to them: running dimensions.
+    fn located(&self, paper: &mut Paper, mark: &str, first: f64, last: f64, y: f64) {
+        let v = self.view;
+        let thin = Pen::solid(v.pens.thin);
+        let ends: Vec<(f64, f64)> = [first, last].map(|s| (s, self.subject.nearest_grid(s))).into_iter().filter(|(_, g)| v.shows(*g)).collect();
+        let reach = |least: bool| ends.iter().flat_map(|(s, g)| [*s, *g]).chain([first, last]).reduce(if least { f64::min } else { f64::max }).unwrap_or(first);
+        paper.soft_line(Layer::CallOut, mark, &[[v.x(reach(true)), y], [v.x(reach(false)), y]], thin);
+        let mut circled: Vec<f64> = Vec::new();
+        for station in [first, last] {
+            tick(paper, Layer::CallOut, mark, [v.x(station), y], v.pens.thin);
+        }
+        for (station, grid) in ends {
+            if !circled.contains(&grid) {
+                paper.ring(Layer::Dimension, "", [v.x(grid), y], 0.8, thin);
+                circled.push(grid);
+            }
+            let distance = (station - grid).abs();
+            if distance > 0.5 {
+                running_figure(paper, v, v.x(station), v.x(grid), y, distance.round());
+            }
+        }
+    }
+
     /// The lap of two pieces across the slab, dimensioned beside them.
-    fn lap(&self, paper: &mut Paper, x: f64, from: f64, to: f64) {
+    fn lap(&self, paper: &mut Paper, name: &str, x: f64, from: f64, to: f64) {
         let v = self.view;
         let (y0, y1) = (self.y(to), self.y(from));
         paper.line(Layer::Dimension, "", &[[x, y0], [x, y1]], Pen::solid(v.pens.thin));
         for y in [y0, y1] {
             tick(paper, Layer::Dimension, "", [x, y], v.pens.thin);
         }
-        let text = format!("lap {}", num(to - from, 0));
+        let text = format!("{name} {}", num(to - from, 0));
         let mut spots = vec![Spot::upright([x + v.note + 0.9, (y0 + y1) / 2.0], Anchor::Middle)];
         for out in [2.0, 4.0, 6.0, 9.0, 12.0, 16.0, 21.0] {
             for dx in [v.note + 0.9, v.note / 2.0] {

@@ -1,30 +1,39 @@
 //! Bars along the span in plan: lanes of representative bars, running dimensions of their ends, thin lines over their zones.
 
-use super::dimension::{Stop, running, tick};
+use super::dimension::{Stop, level, running, tick};
 use super::paper::Paper;
 use super::plan_view::{PlanView, along_level, along_upright};
 use super::view::{Occurrence, View};
+use crate::base::num;
 use crate::plan::Role;
 use crate::scene::{Layer, Pen};
 
 /// Paper between two bars that stand side by side, mm.
 const LANE: f64 = 4.2;
+/// How far inside the edge its laps are dimensioned, mm on paper.
+const HELD_LAP: f64 = 9.0;
 /// Paper between bars of one lane, mm.
 const APART: f64 = 4.0;
 
 impl PlanView<'_> {
     pub(super) fn bars_along(&self, paper: &mut Paper, along: &[&Occurrence]) {
         let (held, sets): (Vec<&Occurrence>, Vec<&Occurrence>) = along.iter().copied().partition(|o| PlanView::is_held(o));
-        for occurrence in held {
+        for occurrence in &held {
             self.held_along(paper, occurrence);
         }
+        self.held_laps(paper, &held);
         let heights = self.lanes(&sets);
         for (occurrence, y) in sets.iter().zip(&heights) {
             self.bar_along(paper, occurrence, *y);
         }
         self.ends(paper, &sets, &heights);
         for (order, (occurrence, y)) in sets.iter().zip(&heights).enumerate() {
-            self.zone_along(paper, occurrence, *y, order, &sets);
+            // The two ways round of a turned mark are one set: one line through both bars.
+            let is_turned = |i: &usize| sets[*i].bar.mark == occurrence.bar.mark && sets[*i].zone == occurrence.zone && *i != order;
+            let pair = (0..sets.len()).find(is_turned);
+            if pair.is_none_or(|other| other > order) {
+                self.zone_along(paper, occurrence, *y, order, &sets, pair.map(|other| (sets[other], heights[other])));
+            }
         }
     }
 
@@ -99,11 +108,18 @@ impl PlanView<'_> {
     }
 
     /// The thin upright line over a zone, its ring where it crosses the bar, the call-out on it.
-    fn zone_along(&self, paper: &mut Paper, occurrence: &Occurrence, y: f64, order: usize, all: &[&Occurrence]) {
+    fn zone_along(&self, paper: &mut Paper, occurrence: &Occurrence, y: f64, order: usize, all: &[&Occurrence], pair: Option<(&Occurrence, f64)>) {
         let v = self.view;
         let (low, high) = occurrence.extent();
-        let lines = occurrence.lines(1);
-        let (Some((from, to)), Some(first), Some(last)) = (v.clip(low, high), lines.first(), lines.last()) else { return };
+        let mut lines = occurrence.lines(1);
+        // Where both ways round lie side by side, the line crosses both.
+        let (mut shared_low, mut shared_high) = (low, high);
+        if let Some((other, _)) = pair {
+            lines.extend(other.lines(1));
+            lines.sort_by(f64::total_cmp);
+            (shared_low, shared_high) = (low.max(other.extent().0), high.min(other.extent().1));
+        }
+        let (Some((from, to)), Some(first), Some(last)) = (v.clip(shared_low, shared_high), lines.first(), lines.last()) else { return };
         let mark = occurrence.bar.mark.as_str();
         let x = v.x(self.zone_station(occurrence, from, to, all));
         let thin = Pen::solid(v.pens.thin);
@@ -112,7 +128,9 @@ impl PlanView<'_> {
         for y in [y0, y1] {
             tick(paper, Layer::CallOut, mark, [x, y], v.pens.thin);
         }
-        paper.ring(Layer::CallOut, mark, [x, y], 0.9, thin);
+        for y in [Some(y), pair.map(|(_, y)| y)].into_iter().flatten() {
+            paper.ring(Layer::CallOut, mark, [x, y], 0.9, thin);
+        }
         self.call_out(paper, along_upright(x, y0, y1, v.call_out, order % 2 == 1), [x, y], occurrence);
     }
 
@@ -140,6 +158,29 @@ impl PlanView<'_> {
                 let at_start = (from + to) / 2.0 < (st.start + st.end) / 2.0;
                 let share = 0.62 + 0.1 * index as f64;
                 if at_start { from + share * (to - from) } else { to - share * (to - from) }
+            }
+        }
+    }
+
+    /// Laps of the pieces of bars held along each side edge, dimensioned inside the slab.
+    fn held_laps(&self, paper: &mut Paper, held: &[&Occurrence]) {
+        let v = self.view;
+        for is_near in [true, false] {
+            let on_side = |o: &&&Occurrence| o.lines(1).iter().any(|across| (*across < self.width() / 2.0) == is_near);
+            let mut pieces: Vec<(&str, (f64, f64))> = held.iter().filter(on_side).map(|o| (o.bar.mark.as_str(), o.extent())).collect();
+            pieces.sort_by(|a, b| a.1.0.total_cmp(&b.1.0));
+            pieces.dedup_by(|a, b| a.1 == b.1);
+            let y = if is_near { self.top + self.height() - HELD_LAP } else { self.top + HELD_LAP };
+            let mut known: Vec<f64> = Vec::new();
+            for pair in pieces.windows(2) {
+                let (from, to) = (pair[1].1.0, pair[0].1.1);
+                // Equal laps of one edge are dimensioned once.
+                let is_new = known.iter().all(|lap| (lap - (to - from)).abs() > 1.0);
+                if to > from && is_new && v.shows(from) && v.shows(to) {
+                    known.push(to - from);
+                    let marks = if pair[0].0 == pair[1].0 { pair[0].0.to_string() } else { format!("{}, {}", pair[0].0, pair[1].0) };
+                    level(paper, v, v.x(from), v.x(to), y, &format!("{marks} lap {}", num(to - from, 0)));
+                }
             }
         }
     }

@@ -65,7 +65,11 @@ impl Area {
 
 /// The box a text fills, mm: capitals and descenders, exact width of the shipped font.
 pub fn text_area(at: [f64; 2], height: f64, text: &str, anchor: Anchor, upward: bool) -> Area {
-    let width = face().width(text, height);
+    wide_area(at, height, face().width(text, height), anchor, upward)
+}
+
+/// The box of a text whose width is known, mm.
+pub fn wide_area(at: [f64; 2], height: f64, width: f64, anchor: Anchor, upward: bool) -> Area {
     let before = match anchor {
         Anchor::Start => 0.0,
         Anchor::Middle => width / 2.0,

@@ -159,16 +159,30 @@ fn gap(subject: &Subject, v: &View, size: &SheetSize, columns: &[&[Band]]) -> Ga
     Some((from, from + out))
 }
 
-/// Parts of a slab no longer than `most`, cut at supports.
+/// Parts of a slab no longer than `most`, cut at supports; as few as that allows, and about as long as one another.
 fn windows(subject: &Subject, low: f64, high: f64, most: f64) -> Vec<(f64, f64)> {
-    let mut cuts = vec![low];
-    let mut at = low;
-    for pair in subject.model.stations.supports.windows(2).skip(1) {
-        if pair[1].centre - at > most && pair[0].centre > at {
-            cuts.push(pair[0].centre);
-            at = pair[0].centre;
+    let supports = &subject.model.stations.supports;
+    let inner: Vec<f64> = supports.iter().skip(1).take(supports.len().saturating_sub(2)).map(|s| s.centre).collect();
+    let parts = |most: f64| {
+        let mut cuts = vec![low];
+        for pair in inner.iter().copied().chain([high]).collect::<Vec<_>>().windows(2) {
+            let at = cuts.last().copied().unwrap_or(low);
+            if pair[1] - at > most && pair[0] > at {
+                cuts.push(pair[0]);
+            }
         }
+        cuts.push(high);
+        cuts
+    };
+    let fewest = parts(most);
+    // The shortest reach that needs no more parts.
+    let mut even = fewest.clone();
+    for share in (50..100).rev() {
+        let tried = parts(most * f64::from(share) / 100.0);
+        if tried.len() > fewest.len() {
+            break;
+        }
+        even = tried;
     }
-    cuts.push(high);
-    cuts.windows(2).map(|w| (w[0], w[1])).collect()
+    even.windows(2).map(|w| (w[0], w[1])).collect()
 }

@@ -61,6 +61,10 @@ fn corners(subject: &Subject, v: &View) -> Vec<Corner> {
     list
 }
 
+fn subtitle(scale: f64, corner: &Corner) -> String {
+    format!("1:{scale}, bars of one level drawn apart{}", corner.note)
+}
+
 /// What makes an end: the marks in its plane with their distances from the face, and what it rests on.
 fn signature(subject: &Subject, corner: &Corner) -> Vec<String> {
     let cut = cut(subject, corner, 10.0, LOOK, [0.0, 0.0]);
@@ -129,7 +133,7 @@ impl CloseUps {
                 // As many side by side as fill their rows evenly.
                 let columns = count.div_ceil(count.div_ceil(most));
                 let room = width / columns as f64;
-                let notes = corners.iter().map(|c| wrap(&format!("1:{scale}{}", c.note), v.note, room - 3.0).len()).max().unwrap_or(1);
+                let notes = corners.iter().map(|c| wrap(&subtitle(scale, c), v.note, room - 3.0).len()).max().unwrap_or(1);
                 let above = 1.25 * v.call_out + 3.0 + notes as f64 * 1.35 * v.note + 2.0 * line;
                 let row = above + thickness / scale + STUB + 2.0 + 3.4 * line;
                 return Some(CloseUps { scale, columns, row, count, above });
@@ -168,7 +172,7 @@ impl CloseUps {
             let cut = cut(subject, corner, self.scale, look, [x, top + self.above]);
             let within = Area::new([left, top], [left + room.min(width + spare) + 4.0, top + self.row - 1.0]);
             paper.text(&Lettering::new(Layer::Text, v.call_out), Spot::level([left, top + v.call_out + 1.0], Anchor::Start), &corner.title);
-            for (i, line) in wrap(&format!("1:{}{}", self.scale, corner.note), v.note, room - 3.0).iter().enumerate() {
+            for (i, line) in wrap(&subtitle(self.scale, corner), v.note, room - 3.0).iter().enumerate() {
                 let y = top + 1.25 * v.call_out + 1.6 + v.note + i as f64 * 1.35 * v.note;
                 paper.text(&Lettering::new(Layer::Text, v.note), Spot::level([left, y], Anchor::Start), line);
             }
@@ -218,7 +222,7 @@ fn legs(paper: &mut Paper, v: &View, cut: &Cut, corner: &Corner) {
     }
     let middle = cut.subject.slab.thickness.value / 2.0;
     // Above: side cover and top leg in one chain.
-    let y = cut.corner[1] - v.note - 3.0 - 0.6 * line;
+    let y = cut.corner[1] - v.note - 3.0 - 0.5 * line;
     if let Some(leg) = legs.iter().filter(|l| l.z > middle).min_by(|a, b| (a.end - a.outer).abs().total_cmp(&(b.end - b.outer).abs())) {
         leg_dimension(paper, v, cut, leg, y, inward);
     }
@@ -273,7 +277,7 @@ fn lap(paper: &mut Paper, v: &View, cut: &Cut, leg: &Leg, y: f64, inward: f64) {
     let Some(start) = ends.map(|x| x * inward).reduce(f64::min).map(|x| x.max(leg.upright * inward) * inward) else { return };
     let long = (leg.end - start) * inward;
     if long > 1.0 && start >= cut.low && start <= cut.high && leg.end >= cut.low && leg.end <= cut.high {
-        level(paper, v, cut.x(start), cut.x(leg.end), y, &format!("lap {}", mm(long)));
+        level(paper, v, cut.x(start), cut.x(leg.end), y, &format!("overlap {}", mm(long)));
     }
 }
 
@@ -337,6 +341,7 @@ pub(super) fn names(paper: &mut Paper, v: &View, cut: &Cut, points: Vec<(String,
         paper.label(Label {
             lettering: Lettering::of(Layer::CallOut, &mark, v.note),
             text: mark,
+            width: 0.0,
             near,
             target: Some(at),
             reach: 40.0,

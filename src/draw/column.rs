@@ -9,7 +9,7 @@ use crate::tables::font::wrap;
 
 /// Paper from one line of text to the next, mm.
 pub(super) fn line_step(v: &View) -> f64 {
-    v.note * 1.25 + 1.1
+    v.note * 1.45
 }
 
 fn write(paper: &mut Paper, v: &View, x: f64, y: f64, text: &str) {
@@ -40,12 +40,15 @@ pub fn layer_key(paper: &mut Paper, v: &View, model: &SlabModel, area: &Area, to
     let y = heading(paper, v, area, top, "Layers and order of laying");
     let has = |layer: BarLayer| model.bars.iter().any(|b| b.layer == layer);
     let has_end_top = model.bars.iter().any(|b| b.layer == BarLayer::E && b.role == Role::EndTop);
-    let mut laid: Vec<(BarLayer, &str)> = vec![(BarLayer::B1, "bottom, outermost, along the span")];
-    laid.push((BarLayer::B2, "across, on B1"));
-    laid.push((BarLayer::E, "both faces: U-bars and bars at ends and edges"));
-    laid.push((BarLayer::T2, "across, under T1, on chairs"));
-    laid.push((BarLayer::T1, "top, outermost, along the span"));
-    laid.retain(|(layer, _)| has(*layer));
+    let has_edge = model.bars.iter().any(|b| b.layer == BarLayer::E && b.role == Role::Edge);
+    let rows = [
+        (BarLayer::T1, "top, outermost, along the span"),
+        (BarLayer::T2, if has(BarLayer::T1) { "across, under T1, on chairs" } else { "across, on chairs" }),
+        (BarLayer::E, "both faces, at ends and edges"),
+        (BarLayer::B2, if has_edge { "across, on B1, with the bars of the edges" } else { "across, on B1" }),
+        (BarLayer::B1, if has_end_top { "bottom, along the span, with the bars of the ends" } else { "bottom, outermost, along the span" }),
+    ];
+    let laid: Vec<(BarLayer, &str)> = rows.into_iter().filter(|(layer, _)| has(*layer)).collect();
     let pitch = line_step(v) + 0.4;
     let height = pitch * (laid.len().max(3) as f64 - 1.0) + v.note + 3.0;
     let (x0, x1) = (area.min[0] + 1.0, area.min[0] + 42.0);
@@ -77,10 +80,14 @@ pub fn layer_key(paper: &mut Paper, v: &View, model: &SlabModel, area: &Area, to
         levels.push((BarLayer::E, (y + bottom) / 2.0));
     }
     let first = (y + bottom) / 2.0 - pitch * (laid.len() as f64 - 1.0) / 2.0;
-    for (i, (layer, text)) in laid.iter().rev().enumerate() {
+    let mut order = laid.iter().filter(|(layer, _)| *layer != BarLayer::E).count();
+    for (i, (layer, text)) in laid.iter().enumerate() {
         let at = first + i as f64 * pitch;
-        let order = laid.len() - i;
-        write(paper, v, x1 + 10.0, at - v.note / 2.0, &format!("{order}  {}  {text}", layer.name()));
+        // Bars of both faces go in with the mats they belong to: they have no number of their own.
+        let number = if *layer == BarLayer::E { " ".to_string() } else { order.to_string() };
+        order -= usize::from(*layer != BarLayer::E);
+        write(paper, v, x1 + 10.0, at - v.note / 2.0, &number);
+        write(paper, v, x1 + 10.0 + 1.6 * v.note, at - v.note / 2.0, &format!("{}  {text}", layer.name()));
         if let Some((_, level)) = levels.iter().find(|(l, _)| l == layer) {
             paper.line(Layer::Text, "", &[[x1 - 1.5, *level], [x1 + 8.6, at]], Pen::solid(v.pens.thin));
         }
@@ -110,19 +117,22 @@ pub fn legend(paper: &mut Paper, v: &View, subject: &Subject, area: &Area, top: 
         (Sign::Zone, "one bar of a set; the thin line runs over the zone it fills".into()),
         (Sign::End, "end of a straight bar".into()),
         (Sign::Cut, "bar cut by the section".into()),
-        (Sign::Running, "bar ends, each from the grid at the circle".into()),
+        (Sign::Running, "running dimensions: bar ends, first and last bars, each from the grid at the circle".into()),
         (Sign::Hidden, "face under the slab".into()),
     ];
     if turns("alt") {
         rows.push((Sign::Words, "alt: two marks take turns; spacing of this mark alone; the longer first and last".into()));
     }
     if turns("alt rev") {
-        rows.push((Sign::Words, "alt rev: every second bar turned end for end; spacing of all".into()));
+        rows.push((Sign::Words, "alt rev: one mark, every second bar the other way round, as the two drawn; spacing of all".into()));
     }
     if subject.occurrences.iter().any(|o| o.elsewhere) {
         rows.push((Sign::Words, "(n): number in this zone, of a mark in several; its total stands at its first call-out".into()));
     }
-    rows.push((Sign::Words, "L: cut length".into()));
+    if subject.occurrences.iter().any(|o| o.pieces() > 1) {
+        rows.push((Sign::Words, "(n \u{d7} k): n lines, each of k lapped bars".into()));
+    }
+    rows.push((Sign::Words, "L: cut length; E: bars of both faces".into()));
     let (thin, x) = (Pen::solid(v.pens.thin), area.min[0]);
     for (sign, text) in rows {
         let m = y + v.note * 0.6;

@@ -18,6 +18,7 @@ pub fn figure(paper: &mut Paper, v: &View, near: Vec<Spot>, target: [f64; 2], te
     paper.label(Label {
         lettering: Lettering::new(Layer::Dimension, v.note),
         text: text.into(),
+        width: 0.0,
         near,
         target: Some(target),
         reach: 24.0,
@@ -121,25 +122,30 @@ pub fn running(paper: &mut Paper, v: &View, origin: f64, y: f64, stops: &[Stop])
             paper.soft_line(Layer::Dimension, "", &[[stop.x, stop.from_y + (y - stop.from_y).signum() * 0.8], [stop.x, y]], pen);
         }
         tick(paper, Layer::Dimension, "", [stop.x, y], v.pens.thin);
-        let outward = if stop.x < origin { -1.0 } else { 1.0 };
-        let mut spots = Vec::new();
-        let middle = v.note / 2.0;
-        for shift in [0.0, 0.8, 1.6, -0.8, 2.2, -1.6, 2.8, 3.4, -2.4, 4.2, 5.0, 6.0, 7.0] {
-            let x = stop.x + outward * shift + middle;
-            spots.push(Spot::upright([x, y + 1.7], Anchor::End));
-        }
-        for shift in [0.0, 0.8, 1.6, 2.6, 3.6] {
-            spots.push(Spot::upright([stop.x + outward * (shift + 1.0) + middle, y - 1.7], Anchor::Start));
-        }
-        let side = if outward > 0.0 { Anchor::Start } else { Anchor::End };
-        for out in [1.7, 4.0, 7.0] {
-            spots.push(Spot::level([stop.x + outward * out, y + middle], side));
-        }
-        for drop in [3.2, 5.0, 7.0, 9.0, 12.0] {
-            for shift in [0.0, 0.8, -0.8] {
-                spots.push(Spot::upright([stop.x + outward * shift + middle, y + drop], Anchor::End));
-            }
-        }
-        figure(paper, v, spots, [stop.x, y], &mm(stop.distance));
+        running_figure(paper, v, stop.x, origin, y, stop.distance);
     }
+}
+
+/// The figure of a running dimension at its stop: upright, under the line, else over it or beside.
+pub fn running_figure(paper: &mut Paper, v: &View, x: f64, origin: f64, y: f64, distance: f64) {
+    let outward = if x < origin { -1.0 } else { 1.0 };
+    let mut spots = Vec::new();
+    let middle = v.note / 2.0;
+    for shift in [0.0, 0.8, 1.6, -0.8, 2.2, -1.6, 2.8, 3.4, -2.4, 4.2, 5.0, 6.0, 7.0] {
+        let at = x + outward * shift + middle;
+        spots.push(Spot::upright([at, y + 1.7], Anchor::End));
+    }
+    for shift in [0.0, 0.8, 1.6, 2.6, 3.6] {
+        spots.push(Spot::upright([x + outward * (shift + 1.0) + middle, y - 1.7], Anchor::Start));
+    }
+    let side = if outward > 0.0 { Anchor::Start } else { Anchor::End };
+    for out in [1.7, 4.0, 7.0] {
+        spots.push(Spot::level([x + outward * out, y + middle], side));
+    }
+    for drop in [3.2, 5.0, 7.0, 9.0, 12.0] {
+        for shift in [0.0, 0.8, -0.8] {
+            spots.push(Spot::upright([x + outward * shift + middle, y + drop], Anchor::End));
+        }
+    }
+    figure(paper, v, spots, [x, y], &mm(distance));
 }

@@ -38,7 +38,7 @@ pub fn frame(paper: &mut Paper, size: &SheetSize) {
         ([5.0, middle[1]], [area.min[0] + 5.0, middle[1]]),
         ([size.width - 5.0, middle[1]], [area.max[0] - 5.0, middle[1]]),
     ] {
-        paper.scene.line(Layer::Frame, &[a, b], Pen::solid(s.frame_pen));
+        paper.line(Layer::Frame, "", &[a, b], Pen::solid(s.frame_pen));
     }
     fields(paper, size, &area, Pen::solid(s.field_pen));
 }

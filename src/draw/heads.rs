@@ -19,7 +19,7 @@ fn circle(v: &View, subject: &Subject) -> f64 {
 
 /// Paper of the grid heads and their dimensions, mm.
 pub fn heads_height(v: &View, subject: &Subject) -> f64 {
-    2.0 * circle(v, subject) + 2.0 + 2.0 * (v.note + 3.2) + 1.0
+    2.0 * circle(v, subject) + 2.0 + 3.0 * (v.note + 3.2) + 1.0
 }
 
 /// Paper of a view title, mm.
@@ -55,7 +55,11 @@ pub fn heads(paper: &mut Paper, v: &View, subject: &Subject, top: f64) {
     }
     let name = Lettering::new(Layer::Dimension, v.note);
     let left = v.x(st.start.max(v.low).min(st.supports[0].centre.max(v.low))) - 3.0 - 4.0 * v.note;
-    for (y, text) in [(first, "grids"), (second, "faces")] {
+    let third = second + v.note + 3.2;
+    if v.shows(st.start) && v.shows(st.end) {
+        level(paper, v, v.x(st.start), v.x(st.end), third, &mm(st.end - st.start));
+    }
+    for (y, text) in [(first, "grids"), (second, "faces"), (third, "overall")].into_iter().take(if v.shows(st.start) && v.shows(st.end) { 3 } else { 2 }) {
         paper.text(&name, Spot::level([left, y + v.note / 2.0], Anchor::End), text);
     }
 }
@@ -105,10 +109,13 @@ pub fn match_line(paper: &mut Paper, v: &View, station: f64, grid: &str, sheet: 
     paper.soft_line(Layer::Grid, "", &[[x + out * 0.8, top], [x + out * 0.8, bottom]], pen);
     let beside = |by: f64| if out < 0.0 { x - by } else { x + by + v.note };
     let down = |by: f64| (0..120).map(move |i| (by, top + 30.0 + 4.0 * f64::from(i))).filter(|(_, y)| *y < bottom - 10.0);
-    let near = [3.0, 8.0, 13.0].into_iter().flat_map(down).map(|(by, y)| Spot::upright([beside(by), y], Anchor::Middle));
+    let side = if out < 0.0 { Anchor::End } else { Anchor::Start };
+    let under = [v.note + 2.0, 2.5 * v.note + 2.0].map(|dy| Spot::level([x + out * 2.0, bottom + dy], side));
+    let near = [3.0, 8.0, 13.0].into_iter().flat_map(down).map(|(by, y)| Spot::upright([beside(by), y], Anchor::Middle)).chain(under);
     paper.label(Label {
         lettering: Lettering::new(Layer::Text, v.note),
         text: format!("match line {grid}: see sheet {sheet}"),
+        width: 0.0,
         near: near.collect(),
         target: Some([x + out * 0.8, (top + bottom) / 2.0]),
         reach: 90.0,

@@ -1,6 +1,7 @@
 //! What stands on a sheet, found by place: squares of paper that know what passes through them.
 
 use super::area::Area;
+use std::cell::RefCell;
 
 /// How much a text minds standing on a thing.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
@@ -31,6 +32,8 @@ pub struct Index {
     rows: usize,
     squares: Vec<Vec<Id>>,
     things: Vec<Option<(Form, Firmness)>>,
+    /// The last question, and the one in which each thing was seen: so that a thing in several squares is met once.
+    seen: RefCell<(u32, Vec<u32>)>,
 }
 
 /// What a box or a piece meets, by firmness.
@@ -45,7 +48,7 @@ pub struct Met {
 impl Index {
     pub fn new(width: f64, height: f64) -> Index {
         let (columns, rows) = ((width / SQUARE) as usize + 1, (height / SQUARE) as usize + 1);
-        Index { columns, rows, squares: vec![Vec::new(); columns * rows], things: Vec::new() }
+        Index { columns, rows, squares: vec![Vec::new(); columns * rows], things: Vec::new(), seen: RefCell::default() }
     }
 
     pub fn add_piece(&mut self, a: [f64; 2], b: [f64; 2], firmness: Firmness) -> Id {
@@ -72,18 +75,28 @@ impl Index {
         }
     }
 
-    fn squares_of(&self, area: &Area) -> Vec<usize> {
+    fn squares_of(&self, area: &Area) -> impl Iterator<Item = usize> + use<> {
         let cell = |v: f64, most: usize| ((v / SQUARE).max(0.0) as usize).min(most - 1);
         let (x0, x1) = (cell(area.min[0], self.columns), cell(area.max[0], self.columns));
         let (y0, y1) = (cell(area.min[1], self.rows), cell(area.max[1], self.rows));
-        (y0..=y1).flat_map(|y| (x0..=x1).map(move |x| (x, y))).map(|(x, y)| y * self.columns + x).collect()
+        let columns = self.columns;
+        (y0..=y1).flat_map(move |y| (x0..=x1).map(move |x| y * columns + x))
     }
 
-    fn near(&self, area: &Area) -> Vec<Id> {
-        let mut ids: Vec<Id> = self.squares_of(area).into_iter().flat_map(|s| self.squares[s].iter().copied()).collect();
-        ids.sort_unstable();
-        ids.dedup();
-        ids
+    /// Hands over everything in the squares of an area, each thing once.
+    fn near(&self, area: &Area, mut take: impl FnMut(Id, &Form, Firmness)) {
+        let mut seen = self.seen.borrow_mut();
+        seen.0 += 1;
+        let round = seen.0;
+        seen.1.resize(self.things.len(), 0);
+        for id in self.squares_of(area).flat_map(|s| self.squares[s].iter().copied()) {
+            if std::mem::replace(&mut seen.1[id], round) == round {
+                continue;
+            }
+            if let Some((form, firmness)) = &self.things[id] {
+                take(id, form, *firmness);
+            }
+        }
     }
 
     /// What a box meets.
@@ -107,7 +120,7 @@ impl Index {
 
     fn met(&self, area: &Area, hit: impl Fn(&Form) -> bool) -> Met {
         let mut met = Met::default();
-        for (form, firmness) in self.near(area).into_iter().filter_map(|id| self.things[id].as_ref()) {
+        self.near(area, |_, form, firmness| {
             if hit(form) {
                 match firmness {
                     Firmness::Text => met.texts += 1,
@@ -116,24 +129,32 @@ impl Index {
                     Firmness::Soft => met.soft += 1,
                 }
             }
-        }
+        });
         met
     }
 
     /// The boxes of texts near an area that meet it, by id.
     pub fn texts_met(&self, area: &Area) -> Vec<Id> {
-        let is_met = |id: &Id| matches!(self.things[*id], Some((Form::Box(other), Firmness::Text)) if area.meets(&other));
-        self.near(area).into_iter().filter(is_met).collect()
+        let mut met = Vec::new();
+        self.near(area, |id, form, firmness| {
+            if firmness == Firmness::Text && matches!(form, Form::Box(other) if area.meets(other)) {
+                met.push(id);
+            }
+        });
+        met
     }
 
     /// Boxes of all texts that a straight piece passes through, grown by `by`.
     pub fn boxes_on(&self, a: [f64; 2], b: [f64; 2], by: f64) -> Vec<Area> {
         let area = Area::new([a[0].min(b[0]), a[1].min(b[1])], [a[0].max(b[0]), a[1].max(b[1])]).grown(by);
-        let boxes = self.near(&area).into_iter().filter_map(|id| match self.things[id] {
-            Some((Form::Box(other), Firmness::Text)) => Some(other.grown(by)),
-            _ => None,
+        let mut boxes = Vec::new();
+        self.near(&area, |_, form, firmness| {
+            if let (Firmness::Text, Form::Box(other)) = (firmness, form) {
+                boxes.push(other.grown(by));
+            }
         });
-        boxes.filter(|other| other.is_crossed(a, b)).collect()
+        boxes.retain(|other| other.is_crossed(a, b));
+        boxes
     }
 }
 

@@ -1,15 +1,19 @@
 //! Where texts stand. Each label has places it may take, each place a cost; all are set one by one, the tightest first, then
 //! moved while that helps: a text without a free place takes its best one and the texts it meets look for others.
 
+use super::area::wide_area;
 use super::index::{Firmness, Id};
 use super::paper::{Area, Lettering, Paper, Spot};
 use crate::scene::{Anchor, Pen};
+use crate::tables::font::face;
 
 /// A text that waits for its place.
 #[derive(Clone, Debug)]
 pub struct Label {
     pub lettering: Lettering,
     pub text: String,
+    /// Width of the text, mm; known once the label waits.
+    pub width: f64,
     /// Places beside what it names, the best first.
     pub near: Vec<Spot>,
     /// What a leader points at, where no near place is free; none for texts that may not leave their place.
@@ -23,6 +27,12 @@ pub struct Label {
     /// Lower numbers choose first.
     pub order: u8,
     pub leader_pen: Pen,
+}
+
+impl Label {
+    fn area(&self, spot: &Spot) -> Area {
+        wide_area(spot.at, self.lettering.height, self.width, spot.anchor, spot.upward)
+    }
 }
 
 /// A label in its place.
@@ -42,7 +52,7 @@ const OUTSIDE: f64 = 5000.0;
 /// Radius of the dot at the end of a leader, mm.
 pub(super) const DOT: f64 = 0.5;
 /// What it costs to stand in line with another text so near that the two read as one.
-const IN_LINE: f64 = 45.0;
+const IN_LINE: f64 = 150.0;
 /// How often labels are moved again.
 const ROUNDS: usize = 12;
 /// With more texts than this without a place, none is moved.
@@ -66,6 +76,7 @@ impl Paper {
         let label = Label {
             lettering: lettering.clone(),
             text: text.into(),
+            width: face().width(text, lettering.height),
             near: spots.into_iter().collect(),
             target: None,
             reach: 0.0,
@@ -118,7 +129,7 @@ fn improve(paper: &mut Paper, labels: &[Label], standing: &mut [Option<Standing>
         }
         // Its best place if texts would move away; then those in its way look for other places.
         let Some(wished) = best(paper, &labels[i], 40.0) else { continue };
-        let area = labels[i].lettering.area(&wished.spot, &labels[i].text).grown(CLEAR);
+        let area = labels[i].area(&wished.spot).grown(CLEAR);
         let met = paper.index.texts_met(&area);
         let in_way: Vec<usize> = (0..labels.len()).filter(|j| standing[*j].as_ref().is_some_and(|s| s.ids.iter().any(|id| met.contains(id)))).collect();
         let old: Vec<Place> = in_way.iter().filter_map(|j| standing[*j].as_ref().map(|s| s.place)).collect();
@@ -161,7 +172,7 @@ fn improve(paper: &mut Paper, labels: &[Label], standing: &mut [Option<Standing>
 }
 
 fn stand(paper: &mut Paper, label: &Label, place: Place) -> Standing {
-    let mut ids = vec![paper.index.add_box(label.lettering.area(&place.spot, &label.text), Firmness::Text)];
+    let mut ids = vec![paper.index.add_box(label.area(&place.spot), Firmness::Text)];
     if let Some([a, b]) = place.leader {
         ids.push(paper.index.add_piece(a, b, Firmness::Leader));
         let dot = dot(b);
@@ -186,7 +197,7 @@ fn lift(paper: &mut Paper, standing: &Standing) {
 fn best(paper: &Paper, label: &Label, text: f64) -> Option<Place> {
     let mut best: Option<Place> = None;
     for (i, spot) in label.near.iter().enumerate() {
-        let leader = label.target.filter(|_| label.leads).map(|t| [foot(&label.lettering.area(spot, &label.text), t, label.lettering.height), t]);
+        let leader = label.target.filter(|_| label.leads).map(|t| [foot(&label.area(spot), t, label.lettering.height), t]);
         let cost = price(paper, label, *spot, leader, text) + 0.5 * i as f64;
         if best.is_none_or(|b| cost < b.cost) {
             best = Some(Place { spot: *spot, leader, cost });
@@ -203,7 +214,7 @@ fn best(paper: &Paper, label: &Label, text: f64) -> Option<Place> {
             let level = Spot::level(at, if dx > 0.0 { Anchor::Start } else { Anchor::End });
             let upright = Spot::upright(at, if dy > 0.0 { Anchor::End } else { Anchor::Start });
             for spot in [level, upright] {
-                let area = label.lettering.area(&spot, &label.text);
+                let area = label.area(&spot);
                 let leader = Some([foot(&area, target, label.lettering.height), target]);
                 let cost = price(paper, label, spot, leader, text) + 20.0;
                 if best.is_none_or(|b| cost < b.cost) {
@@ -266,7 +277,7 @@ fn along(area: &Area, height: f64, upward: bool) -> Area {
 
 /// What a place costs: what its box and its leader meet, and how long the leader is.
 fn price(paper: &Paper, label: &Label, spot: Spot, leader: Option<[[f64; 2]; 2]>, text: f64) -> f64 {
-    let area = label.lettering.area(&spot, &label.text);
+    let area = label.area(&spot);
     let mut cost = if label.within.holds(&area) { 0.0 } else { OUTSIDE };
     let met = paper.index.met_by_box(&area.grown(CLEAR));
     cost += IN_LINE * paper.index.texts_met(&along(&area, label.lettering.height, spot.upward)).len().saturating_sub(met.texts) as f64;

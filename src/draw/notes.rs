@@ -1,7 +1,7 @@
 //! The notes of a sheet, made from the model only: what is not on the job is not said.
 
 use crate::base::{mm, num};
-use crate::finding::{Check, Verdict};
+use crate::finding::{Check, KINDS, Verdict};
 use crate::job::{Edge, Job, Slab};
 use crate::place::SlabModel;
 use crate::plan::{Layer, Role};
@@ -31,7 +31,10 @@ pub fn notes(job: &Job, slab: &Slab, placed: &SlabModel) -> Vec<String> {
     let cover = &slab.cover;
     let values = [("slab", slab.mark.clone()), ("bottom", mm(cover.bottom.value)), ("top", mm(cover.top.value)), ("side", mm(cover.side.value))];
     notes.push(note("cover", &values));
-    notes.push(note("layers", &[]));
+    notes.push(note("layers", &[("order", order(placed))]));
+    if closes(placed) && placed.bars.iter().any(|b| b.layer == Layer::T2) {
+        notes.push(note("under_legs", &[]));
+    }
     notes.push(note("spacing", &[]));
     notes.push(laps(job, placed, note));
     if let Some(heights) = chair_heights(placed) {
@@ -41,6 +44,9 @@ pub fn notes(job: &Job, slab: &Slab, placed: &SlabModel) -> Vec<String> {
         if *edge == Edge::Joint {
             notes.push(note("joint", &[("slab", slab.mark.clone()), ("side", side.to_string())]));
         }
+    }
+    if slab.edges.contains(&Edge::Free) && placed.bars.iter().any(|b| b.layer == Layer::E && b.role == Role::Edge && !b.is_straight()) {
+        notes.push(note("edge_bars", &[]));
     }
     notes.push(note("spacers", &[]));
     notes.push(note("deduction", &[("deduction", basis.deduction.text.clone())]));
@@ -55,6 +61,20 @@ pub fn notes(job: &Job, slab: &Slab, placed: &SlabModel) -> Vec<String> {
     notes.push(note("figures", &[("editions", editions(job))]));
     notes.extend(t.notes.caution.iter().map(|c| c.text.clone()));
     notes
+}
+
+/// Whether bars of both faces close the slab ends.
+fn closes(placed: &SlabModel) -> bool {
+    placed.bars.iter().any(|b| b.layer == Layer::E && b.role == Role::EndTop)
+}
+
+/// The mats in the order they are laid, with what goes in beside them.
+fn order(placed: &SlabModel) -> String {
+    let has = |layer: Layer| placed.bars.iter().any(|b| b.layer == layer);
+    let edge = placed.bars.iter().any(|b| b.layer == Layer::E && b.role == Role::Edge);
+    let bottom = if closes(placed) { "B1 with the bars that close the ends" } else { "B1" };
+    let second = if edge { "B2 with the edge bars" } else { "B2" };
+    [Some(bottom), has(Layer::B2).then_some(second), has(Layer::T2).then_some("T2"), has(Layer::T1).then_some("T1")].into_iter().flatten().join(", ")
 }
 
 fn laps(job: &Job, placed: &SlabModel, note: impl Fn(&str, &[(&str, String)]) -> String) -> String {
@@ -98,16 +118,16 @@ pub fn editions(job: &Job) -> String {
 
 /// The stamp over the title block: failed checks first, then preliminary; none where contractual and clean.
 pub fn stamp(job: &Job, checks: &[Vec<Check>]) -> Option<String> {
-    let failed: Vec<&str> = checks.iter().flatten().filter(|c| c.verdict == Verdict::Fail).map(|c| c.code).collect();
+    let failed: Vec<&Check> = checks.iter().flatten().filter(|c| c.verdict == Verdict::Fail).collect();
     let stamps = &tables().notes.stamp;
     if !failed.is_empty() {
         let count = format!("{} check{}", failed.len(), if failed.len() == 1 { "" } else { "s" });
-        let mut codes: Vec<&str> = failed.iter().copied().unique().collect();
-        if codes.len() > 3 {
-            codes.truncate(3);
-            codes.push("...");
+        let mut about: Vec<&str> = failed.iter().map(|c| c.code).unique().filter_map(|code| KINDS.iter().find(|k| k.code == code)).map(|k| k.text).collect();
+        if about.len() > 2 {
+            about.truncate(2);
+            about.push("...");
         }
-        return stamps.get("failed").map(|s| fill(s, &[("count", count), ("codes", codes.join(", "))]));
+        return stamps.get("failed").map(|s| fill(s, &[("count", count), ("about", about.join("; "))]));
     }
     job.head.revision.starts_with('P').then(|| stamps.get("preliminary").map(|s| s.text.clone())).flatten()
 }

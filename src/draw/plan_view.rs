@@ -166,7 +166,8 @@ impl PlanView<'_> {
         let v = self.view;
         paper.label(Label {
             lettering: Lettering::of(Layer::CallOut, &occurrence.bar.mark, v.call_out),
-            text: occurrence.call_out(),
+            text: self.says(occurrence),
+            width: 0.0,
             near,
             target: Some(target),
             reach: REACH,
@@ -175,6 +176,22 @@ impl PlanView<'_> {
             order: if occurrence.first { 1 } else { 2 },
             leader_pen: Pen::solid(v.pens.thin),
         });
+    }
+
+    /// What a call-out says on this sheet: a set that goes on from the sheet before is counted there; the first place of a mark on a
+    /// later sheet names its size and layer again.
+    fn says(&self, occurrence: &Occurrence) -> String {
+        let v = self.view;
+        let starts = if occurrence.bar.is_along_span() { occurrence.extent().0 } else { occurrence.lines(0).first().copied().unwrap_or(v.low) };
+        if let Some(sheet) = v.before.filter(|_| starts < v.low - 0.5) {
+            return format!("{}, see sheet {sheet}", occurrence.bar.mark);
+        }
+        let is_first_here = || self.subject.occurrences.iter().filter(|o| o.bar.mark == occurrence.bar.mark && self.is_here(o)).all(|o| !o.first);
+        let leads_here = || {
+            let mut own = self.subject.occurrences.iter().filter(|o| o.bar.mark == occurrence.bar.mark && self.is_here(o) && o.extent().0 >= v.low - 0.5);
+            own.next().is_some_and(|o| std::ptr::eq(o, occurrence))
+        };
+        if v.before.is_some() && !occurrence.first && is_first_here() && leads_here() { occurrence.named() } else { occurrence.call_out() }
     }
 
     /// Names of the side edges and the width, at the left of the plan.
@@ -199,6 +216,7 @@ impl PlanView<'_> {
             paper.label(Label {
                 lettering: Lettering::new(Layer::Text, v.note),
                 text: format!("{near}{text}"),
+                width: 0.0,
                 near: spots.into_iter().chain(outside).collect(),
                 target: None,
                 reach: 0.0,

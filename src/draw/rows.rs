@@ -111,6 +111,7 @@ fn bar(paper: &mut Paper, v: &View, occurrence: &Occurrence, y: f64) {
     paper.label(Label {
         lettering: Lettering::of(Layer::CallOut, mark, v.note),
         text: name(occurrence),
+        width: 0.0,
         near,
         target: Some([v.x((from + to) / 2.0), y]),
         reach: 20.0,

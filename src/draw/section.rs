@@ -251,7 +251,7 @@ pub fn name_layers(paper: &mut Paper, v: &View, cut: &Cut) {
     let thin = Pen::solid(v.pens.thin);
     let mut levels: Vec<(BarLayer, f64)> = Vec::new();
     for layer in [BarLayer::T1, BarLayer::T2, BarLayer::B2, BarLayer::B1] {
-        let of_layer = cut.subject.model.bars.iter().filter(|b| b.layer == layer || layer == BarLayer::T1 && b.role == Role::EndTop);
+        let of_layer = cut.subject.model.bars.iter().filter(|b| b.layer == layer);
         let z = of_layer.flat_map(|b| &b.sets).map(|s| s.axis[0][2].max(s.axis.last().map_or(0.0, |p| p[2]))).next();
         levels.extend(z.map(|z| (layer, z)));
     }

@@ -133,7 +133,8 @@ pub fn sheet(all: &Frame, subject: &Subject, choice: &Choice, number: usize, nei
     let has_across = across.is_some_and(|a| needed[0] <= a.width() && needed[1] <= a.height());
     let mut views = Vec::new();
     for (i, (bands, spread)) in choice.columns.iter().zip(&layout.spread).enumerate() {
-        let view = View::new(size, choice.scale, choice.low, choice.high, area.min[0] + i as f64 * width + margin(&measure));
+        let before = neighbours.iter().find(|n| n.station < (choice.low + choice.high) / 2.0).map(|n| n.sheet);
+        let view = View { before, ..View::new(size, choice.scale, choice.low, choice.high, area.min[0] + i as f64 * width + margin(&measure)) };
         let column = bands::Column { bands, gap: choice.gap, top: area.min[1], spread: *spread, neighbours, has_across };
         views.extend(bands::draw(&mut paper, &view, subject, &column));
     }

@@ -39,12 +39,14 @@ pub struct View {
     pub note: f64,
     pub call_out: f64,
     pub title: f64,
+    /// The sheet that shows what lies before `low`, where the slab is cut there.
+    pub before: Option<usize>,
 }
 
 impl View {
     pub fn new(size: &SheetSize, scale: f64, low: f64, high: f64, left: f64) -> View {
         let text = size.text;
-        View { scale, low, high, origin: left - low / scale, pens: size.pens, note: text.note, call_out: text.call_out, title: text.view }
+        View { scale, low, high, origin: left - low / scale, pens: size.pens, note: text.note, call_out: text.call_out, title: text.view, before: None }
     }
 
     /// A station on paper, mm.
@@ -141,20 +143,47 @@ impl<'a> Occurrence<'a> {
     /// The call-out: number, type and size, mark, spacing, layer, comment; where the mark stands in several zones the number here in
     /// brackets. After its first place the number of the mark is not written again: mark, spacing, number here.
     pub fn call_out(&self) -> String {
-        let here = if self.elsewhere { format!(" ({})", self.in_zone) } else { String::new() };
-        let spacing = self.spacing_text();
-        if self.first {
-            let bar = self.bar;
-            return format!("{}{}-{}{spacing} {}{}{here}", bar.each(), bar.type_size(), bar.mark, bar.layer.name(), self.comment());
+        if self.first { format!("{}{}", self.bar.each(), self.named()) } else { self.short() }
+    }
+
+    /// The call-out at its first place on a later sheet: all but the number of the mark.
+    pub fn named(&self) -> String {
+        let bar = self.bar;
+        format!("{}-{}{} {}{}{}", bar.type_size(), bar.mark, self.spacing_text(), bar.layer.name(), self.comment(), self.here())
+    }
+
+    fn short(&self) -> String {
+        if self.leads { format!("{}{}{}", self.bar.mark, self.spacing_text(), self.here()) } else { self.bar.mark.clone() }
+    }
+
+    /// The number in this zone, in brackets; of lapped pieces, lines times pieces.
+    fn here(&self) -> String {
+        let pieces = self.pieces();
+        if pieces > 1 {
+            format!(" ({} \u{d7} {pieces})", self.in_zone / pieces)
+        } else if self.elsewhere {
+            format!(" ({})", self.in_zone)
+        } else {
+            String::new()
         }
-        if self.leads { format!("{}{spacing}{here}", self.bar.mark) } else { self.bar.mark.clone() }
+    }
+
+    /// Of bars across the slab, how many pieces make one line; 1 where the lines have unequal numbers.
+    pub fn pieces(&self) -> u32 {
+        if self.bar.is_along_span() || self.bar.layer == crate::plan::Layer::E {
+            return 1;
+        }
+        let apart = 2.5 * f64::from(self.bar.size);
+        let lines = self.lines(0);
+        let count = 1 + lines.windows(2).filter(|w| w[1] - w[0] > apart).count();
+        let pieces = lines.len() / count.max(1);
+        if pieces > 1 && pieces * count == lines.len() && self.in_zone as usize == lines.len() { pieces as u32 } else { 1 }
     }
 
     fn comment(&self) -> String {
         let closes = self.bar.layer == crate::plan::Layer::E && !self.bar.is_straight();
-        let beside = if self.zone.contains("/edge:") && !self.zone.contains("/span:") { " U-bar at each B2" } else { " U-bar" };
         let turn = self.turn();
-        format!("{}{}", if closes { beside } else { "" }, if turn.is_empty() { String::new() } else { format!(" {turn}") })
+        format!("{}{}", if closes { " U-bar" } else { "" }, if turn.is_empty() { String::new() } else { format!(" {turn}") })
     }
 
     /// Spacing of the call-out: as called; of alternate bars, that of this mark alone.

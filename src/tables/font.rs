@@ -11,6 +11,8 @@ pub struct Face {
     pub bytes: &'static [u8],
     pub woff2: &'static [u8],
     advances: HashMap<char, f64>,
+    /// Advances of the first letters of Unicode, by their number: most texts use no others.
+    common: [Option<f64>; 128],
 }
 
 /// The one face of every document.
@@ -36,7 +38,8 @@ fn load(bytes: &'static [u8], woff2: &'static [u8]) -> Face {
             }
         });
     }
-    Face { bytes, woff2, advances }
+    let common = std::array::from_fn(|code| u32::try_from(code).ok().and_then(char::from_u32).and_then(|letter| advances.get(&letter).copied()));
+    Face { bytes, woff2, advances, common }
 }
 
 impl Face {
@@ -46,7 +49,8 @@ impl Face {
 
     /// Width of a text whose capitals are `height` mm high, mm.
     pub fn width(&self, text: &str, height: f64) -> f64 {
-        text.chars().map(|c| self.advances.get(&c).copied().unwrap_or(0.6)).sum::<f64>() * height / CAPITAL
+        let advance = |c: char| self.common.get(c as usize).copied().unwrap_or_else(|| self.advances.get(&c).copied()).unwrap_or(0.6);
+        text.chars().map(advance).sum::<f64>() * height / CAPITAL
     }
 }
 
