@@ -157,12 +157,6 @@ impl Scene {
         })
     }
 
-    /// The call-out of a mark that a reader wants first: the one with the number, else the first drawn.
-    pub fn call_out(&self, mark: &str) -> Option<CallOut<'_>> {
-        let own = || self.call_outs().filter(|c| c.mark == mark);
-        own().find(|c| c.number().is_some()).or_else(|| own().next())
-    }
-
     pub fn push(&mut self, layer: Layer, mark: &str, shape: Shape) {
         self.items.push(Item { layer, mark: mark.into(), shape });
     }

@@ -3,20 +3,24 @@
 use super::paper::Area;
 use crate::place::{BarType, SlabModel};
 use crate::scene::{Bookmark, Scene, Shape};
+use std::collections::BTreeMap;
 
 /// Bookmarks of a finished sheet: the sheet, its views in the order given, and under each view the marks whose first call-out stands in it.
 /// Marks outside every view come last, straight under the sheet.
 pub fn bookmarks(scene: &Scene, title: &str, views: &[(String, Area)]) -> Vec<Bookmark> {
-    let mut found: Vec<(&str, [f64; 2], Option<usize>)> = Vec::new();
+    // The call-out with the number before any other, else the first drawn.
+    let mut called: BTreeMap<&str, (bool, [f64; 2])> = BTreeMap::new();
     for call_out in scene.call_outs() {
-        if found.iter().any(|(mark, ..)| *mark == call_out.mark) {
-            continue;
+        let is_full = call_out.number().is_some();
+        let is_better = called.get(call_out.mark).is_none_or(|(known, _)| is_full && !known);
+        if let Shape::Text { at, .. } = call_out.shape
+            && is_better
+        {
+            called.insert(call_out.mark, (is_full, *at));
         }
-        let Some(Shape::Text { at, .. }) = scene.call_out(call_out.mark).map(|c| c.shape) else { continue };
-        let view = views.iter().position(|(_, area)| area.holds(&Area::new(*at, *at)));
-        found.push((call_out.mark, *at, view));
     }
-    found.sort_by_key(|(mark, ..)| *mark);
+    let view = |at: [f64; 2]| views.iter().position(|(_, area)| area.holds(&Area::new(at, at)));
+    let found: Vec<(&str, [f64; 2], Option<usize>)> = called.into_iter().map(|(mark, (_, at))| (mark, at, view(at))).collect();
     let of_view = |view: Option<usize>, level: u8| {
         let own = found.iter().filter(move |(.., v)| *v == view);
         own.map(move |(mark, at, _)| Bookmark { title: scene.names.get(*mark).cloned().unwrap_or_else(|| format!("mark {mark}")), at: near(*at), level })

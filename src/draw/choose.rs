@@ -1,4 +1,5 @@
-//! Which sheets a slab stands on: large scales and small sheets first, whole before in parts, until every text has a place of its own. What does not fit goes on a larger sheet, then at a smaller scale, then over several sheets cut at supports.
+//! Which sheets a slab stands on: large scales and small sheets first, whole before in parts, until every text has a place of its own.
+//! What does not fit goes on a larger sheet, then at a smaller scale, then over several sheets cut at supports.
 
 use super::bands::{self, Band, Gap, Neighbour, PAIRED, STACKED, margin};
 use super::plan_view::BREAK;
@@ -14,19 +15,20 @@ use itertools::Itertools;
 /// Every sheet of a job.
 pub fn sheets(job: &Job, model: &BarModel, checks: &[Vec<Check>]) -> Vec<Scene> {
     let subjects: Vec<Subject> = job.slabs.iter().zip(&model.slabs).map(|(slab, placed)| Subject::new(slab, placed)).collect();
-    let single = Frame { job, model, checks, of: 1 };
-    let mut chosen: Vec<(Vec<Choice>, Vec<Drawn>)> = subjects.iter().map(|s| choose(&single, s, None)).collect();
+    // Most slabs need one sheet: drawn as if all did, and anew only where that was wrong.
+    let one_each = Frame { job, model, checks, of: subjects.len() };
+    let choose_all = |size: Option<&str>| subjects.iter().enumerate().map(|(i, s)| choose(&one_each, s, size, i + 1)).collect();
+    let mut chosen: Vec<(Vec<Choice>, Vec<Drawn>)> = choose_all(None);
     // All sheets of a drawing have one size: the largest that one of them needs.
     let sizes = || chosen.iter().flat_map(|(c, _)| c.iter().map(|c| c.size));
     if let Some(largest) = sizes().max_by(|a, b| a.width.total_cmp(&b.width)).filter(|l| sizes().any(|s| s.name != l.name)) {
-        chosen = subjects.iter().map(|s| choose(&single, s, Some(&largest.name))).collect();
+        chosen = choose_all(Some(&largest.name));
     }
     let of = chosen.iter().map(|(c, _)| c.len()).sum();
-    if of == 1 {
+    if of == subjects.len() {
         return chosen.into_iter().flat_map(|(_, drawn)| drawn).map(|d| d.scene).collect();
     }
-    // Now that the number of sheets is known, each is drawn with its own.
-    let all = Frame { of, ..single };
+    let all = Frame { of, ..one_each };
     let mut scenes = Vec::new();
     for (subject, (choices, _)) in subjects.iter().zip(&chosen) {
         let first = scenes.len() + 1;
@@ -36,15 +38,14 @@ pub fn sheets(job: &Job, model: &BarModel, checks: &[Vec<Check>]) -> Vec<Scene> 
 }
 
 /// The first way to draw a slab in which every text finds its place; where there is none, the one that leaves the fewest over.
-fn choose(all: &Frame, subject: &Subject, size: Option<&str>) -> (Vec<Choice>, Vec<Drawn>) {
+fn choose(all: &Frame, subject: &Subject, size: Option<&str>, first: usize) -> (Vec<Choice>, Vec<Drawn>) {
     let mut best: Option<(usize, Vec<Choice>, Vec<Drawn>)> = None;
     for choices in ways(all.job, subject, size) {
-        let drawn = draw(all, subject, &choices, 1);
+        let drawn = draw(all, subject, &choices, first);
         if drawn.len() < choices.len() {
             continue;
         }
         let unplaced = drawn.iter().map(|d| d.unplaced.len()).sum();
-
         if unplaced == 0 {
             return (choices, drawn);
         }

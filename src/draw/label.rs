@@ -122,7 +122,7 @@ fn improve(paper: &mut Paper, labels: &[Label], standing: &mut [Option<Standing>
     for i in 0..labels.len() {
         let Some(own) = standing[i].take() else { continue };
         lift(paper, &own);
-        let before = price(paper, &labels[i], own.place.spot, own.place.leader, TEXT);
+        let before = price(paper, &labels[i], own.place.spot, own.place.leader, TEXT, f64::INFINITY);
         if before < MEETS {
             standing[i] = Some(stand(paper, &labels[i], Place { cost: before, ..own.place }));
             continue;
@@ -149,7 +149,7 @@ fn improve(paper: &mut Paper, labels: &[Label], standing: &mut [Option<Standing>
         }
         if let Some(own) = standing[i].take() {
             lift(paper, &own);
-            let price = price(paper, &labels[i], wished.spot, wished.leader, TEXT);
+            let price = price(paper, &labels[i], wished.spot, wished.leader, TEXT, f64::INFINITY);
             cost += price;
             standing[i] = Some(stand(paper, &labels[i], Place { cost: price, ..wished }));
         }
@@ -198,7 +198,8 @@ fn best(paper: &Paper, label: &Label, text: f64) -> Option<Place> {
     let mut best: Option<Place> = None;
     for (i, spot) in label.near.iter().enumerate() {
         let leader = label.target.filter(|_| label.leads).map(|t| [foot(&label.area(spot), t, label.lettering.height), t]);
-        let cost = price(paper, label, *spot, leader, text) + 0.5 * i as f64;
+        let known = best.map_or(f64::INFINITY, |b| b.cost);
+        let cost = price(paper, label, *spot, leader, text, known) + 0.5 * i as f64;
         if best.is_none_or(|b| cost < b.cost) {
             best = Some(Place { spot: *spot, leader, cost });
         }
@@ -216,7 +217,8 @@ fn best(paper: &Paper, label: &Label, text: f64) -> Option<Place> {
             for spot in [level, upright] {
                 let area = label.area(&spot);
                 let leader = Some([foot(&area, target, label.lettering.height), target]);
-                let cost = price(paper, label, spot, leader, text) + 20.0;
+                let known = best.map_or(f64::INFINITY, |b| b.cost) - 20.0;
+                let cost = price(paper, label, spot, leader, text, known) + 20.0;
                 if best.is_none_or(|b| cost < b.cost) {
                     best = Some(Place { spot, leader, cost });
                 }
@@ -275,21 +277,25 @@ fn along(area: &Area, height: f64, upward: bool) -> Area {
     }
 }
 
-/// What a place costs: what its box and its leader meet, and how long the leader is.
-fn price(paper: &Paper, label: &Label, spot: Spot, leader: Option<[[f64; 2]; 2]>, text: f64) -> f64 {
+/// What a place costs: what its box and its leader meet, and how long the leader is. Where it comes to `most` or more it is not worth
+/// knowing exactly.
+fn price(paper: &Paper, label: &Label, spot: Spot, leader: Option<[[f64; 2]; 2]>, text: f64, most: f64) -> f64 {
     let area = label.area(&spot);
     let mut cost = if label.within.holds(&area) { 0.0 } else { OUTSIDE };
+    cost += leader.map_or(0.0, |[from, to]| 0.5 * (to[0] - from[0]).hypot(to[1] - from[1]));
+    if cost >= most {
+        return cost;
+    }
     let met = paper.index.met_by_box(&area.grown(CLEAR));
-    cost += IN_LINE * paper.index.texts_met(&along(&area, label.lettering.height, spot.upward)).len().saturating_sub(met.texts) as f64;
     cost += text * met.texts as f64 + MEETS * (met.firm + met.leaders) as f64 + 3.0 * met.soft as f64;
-    if let Some([from, to]) = leader {
-        let length = (to[0] - from[0]).hypot(to[1] - from[1]);
+    if cost >= most {
+        return cost;
+    }
+    cost += IN_LINE * paper.index.texts_met(&along(&area, label.lettering.height, spot.upward)).len().saturating_sub(met.texts) as f64;
+    if let Some([from, to]) = leader.filter(|_| cost < most) {
         let met = paper.index.met_by_piece(from, to);
-        cost += 0.5 * length
-            + text * (met.texts + paper.index.met_by_box(&dot(to)).texts) as f64
-            + 40.0 * met.leaders as f64
-            + 5.0 * met.firm as f64
-            + met.soft as f64;
+        cost += text * (met.texts + paper.index.met_by_box(&dot(to)).texts) as f64;
+        cost += 40.0 * met.leaders as f64 + 5.0 * met.firm as f64 + met.soft as f64;
     }
     cost
 }

@@ -4,6 +4,7 @@ use crate::scene::{Anchor, Scene, Shape};
 use crate::tables::font::text_box;
 use crate::write::pdf::points;
 use lopdf::{Dictionary, Document, Object, ObjectId, StringFormat, dictionary};
+use std::collections::BTreeMap;
 
 /// A page as it stands in the file.
 struct Page<'s> {
@@ -61,10 +62,17 @@ fn outline(file: &mut Document, pages: &[Page]) -> Result<(), String> {
         return Ok(());
     }
     let root = file.new_object_id();
-    let children = |of: Option<usize>| -> Vec<ObjectId> { entries.iter().filter(|e| e.parent == of).map(|e| e.id).collect() };
+    let mut branches: BTreeMap<Option<usize>, Vec<ObjectId>> = BTreeMap::new();
+    let mut places: Vec<usize> = Vec::new();
+    for entry in &entries {
+        let branch = branches.entry(entry.parent).or_default();
+        places.push(branch.len());
+        branch.push(entry.id);
+    }
+    let children = |of: Option<usize>| branches.get(&of).map_or(&[][..], Vec::as_slice);
     for (i, entry) in entries.iter().enumerate() {
         let siblings = children(entry.parent);
-        let own = siblings.iter().position(|id| *id == entry.id).unwrap_or(0);
+        let own = places[i];
         let parent = entry.parent.map_or(root, |p| entries[p].id);
         let mut item = dictionary! { "Title" => text(&entry.title), "Parent" => parent, "Dest" => entry.destination.clone() };
         if own > 0 {
@@ -75,13 +83,13 @@ fn outline(file: &mut Document, pages: &[Page]) -> Result<(), String> {
         }
         // Pages open to their views; views stay closed, or the marks would hide the pages after them.
         let inner = children(Some(i));
-        ends(&mut item, &inner, if entry.level == 0 { 1 } else { -1 });
+        ends(&mut item, inner, if entry.level == 0 { 1 } else { -1 });
         file.objects.insert(entry.id, Object::Dictionary(item));
     }
     let tops = children(None);
     let shown = entries.iter().filter(|e| e.parent.is_none_or(|p| entries[p].level == 0)).count();
     let mut item = dictionary! { "Type" => "Outlines" };
-    ends(&mut item, &tops, 1);
+    ends(&mut item, tops, 1);
     item.set("Count", shown as i64);
     file.objects.insert(root, Object::Dictionary(item));
     let catalog = file.catalog_mut().map_err(|e| e.to_string())?;
@@ -101,12 +109,23 @@ fn ends(item: &mut Dictionary, inner: &[ObjectId], sign: i64) {
 
 /// Call-outs lead to the rows of their marks, the marks in the schedule back to the first call-out; nothing where a file has only one of them.
 fn links(file: &mut Document, pages: &[Page]) -> Result<(), String> {
-    let row = |mark: &str| pages.iter().find_map(|p| p.scene.rows.iter().find(|r| r.mark == mark).map(|r| destination(p, above(r.area[0]))));
-    let first = |mark: &str| {
-        let called = || pages.iter().filter_map(|p| p.scene.call_out(mark).map(|c| (p, c)));
-        let (page, call_out) = called().find(|(_, c)| c.number().is_some()).or_else(|| called().next())?;
-        corners(call_out.shape).map(|area| destination(page, above(area[0])))
-    };
+    let mut rows: BTreeMap<&str, Object> = BTreeMap::new();
+    // The call-out with the number before any other, else the first drawn.
+    let mut called: BTreeMap<&str, (bool, Object)> = BTreeMap::new();
+    for page in pages {
+        for row in &page.scene.rows {
+            rows.entry(&row.mark).or_insert_with(|| destination(page, above(row.area[0])));
+        }
+        for call_out in page.scene.call_outs() {
+            let is_full = call_out.number().is_some();
+            let is_better = called.get(call_out.mark).is_none_or(|(known, _)| is_full && !known);
+            if let Some(area) = corners(call_out.shape).filter(|_| is_better) {
+                called.insert(call_out.mark, (is_full, destination(page, above(area[0]))));
+            }
+        }
+    }
+    let row = |mark: &str| rows.get(mark).cloned();
+    let first = |mark: &str| called.get(mark).map(|(_, to)| to.clone());
     let mut list: Vec<(ObjectId, Vec<Object>)> = Vec::new();
     for page in pages {
         let out = page.scene.call_outs().filter_map(|c| Some(link(page, corners(c.shape)?, row(c.mark)?)));
