@@ -13,6 +13,7 @@ pub mod form;
 pub mod frame;
 pub mod heads;
 pub mod index;
+pub mod inner;
 pub mod label;
 pub mod lists;
 pub mod mass_page;

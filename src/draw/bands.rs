@@ -23,7 +23,7 @@ pub const STACKED: &[&[Band]] = &[&[Band::BottomPlan, Band::TopPlan, Band::TopRo
 pub const PAIRED: &[&[Band]] = &[&[Band::BottomPlan, Band::BottomRows], &[Band::TopPlan, Band::TopRows, Band::Section]];
 
 /// Paper of the support stubs under the section, mm.
-const STUBS: f64 = 10.0;
+pub(super) const STUBS: f64 = 10.0;
 /// Paper over a plan for the name of its far edge and the mark of the section across, mm.
 const OVER: f64 = 3.5;
 /// Paper of the scale bar under the bands, mm.

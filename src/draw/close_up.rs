@@ -134,7 +134,7 @@ impl CloseUps {
                 let columns = count.div_ceil(count.div_ceil(most));
                 let room = width / columns as f64;
                 let notes = corners.iter().map(|c| wrap(&subtitle(scale, c), v.note, room - 3.0).len()).max().unwrap_or(1);
-                let above = 1.25 * v.call_out + 3.0 + notes as f64 * 1.35 * v.note + 2.0 * line;
+                let above = 1.25 * v.call_out + 4.4 + notes as f64 * 1.35 * v.note + 2.0 * line;
                 let row = above + thickness / scale + STUB + 2.0 + 3.4 * line;
                 return Some(CloseUps { scale, columns, row, count, above });
             }

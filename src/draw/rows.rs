@@ -154,17 +154,21 @@ fn ends(paper: &mut Paper, v: &View, subject: &Subject, occurrence: &Occurrence,
     }
 }
 
+/// Where the bottom bars of two spans lie side by side over an inner support: from the start of one to the end of the other.
+pub fn lap_over(subject: &Subject, centre: f64) -> Option<(f64, f64)> {
+    let middle = |o: &Occurrence| (o.extent().0 + o.extent().1) / 2.0;
+    let bottom = || subject.occurrences.iter().filter(|o| o.bar.role == Role::SpanBottom);
+    let over = || bottom().filter(|o| o.extent().0 < centre && o.extent().1 > centre);
+    let end = over().filter(|o| middle(o) < centre).map(|o| o.extent().1).fold(f64::INFINITY, f64::min);
+    let start = over().filter(|o| middle(o) > centre).map(|o| o.extent().0).fold(f64::NEG_INFINITY, f64::max);
+    (end.is_finite() && start.is_finite() && end > start).then_some((start, end))
+}
+
 /// Laps of the bottom bars over inner supports, dimensioned in one line.
 fn laps(paper: &mut Paper, view: &View, subject: &Subject, y: f64) {
-    let bottom: Vec<&Occurrence> = subject.occurrences.iter().filter(|o| o.bar.role == Role::SpanBottom).collect();
     let supports = &subject.model.stations.supports;
     for support in supports.iter().skip(1).take(supports.len().saturating_sub(2)) {
-        let centre = support.centre;
-        let middle = |o: &Occurrence| (o.extent().0 + o.extent().1) / 2.0;
-        let over = || bottom.iter().filter(|o| o.extent().0 < centre && o.extent().1 > centre);
-        let end = over().filter(|o| middle(o) < centre).map(|o| o.extent().1).fold(f64::INFINITY, f64::min);
-        let start = over().filter(|o| middle(o) > centre).map(|o| o.extent().0).fold(f64::NEG_INFINITY, f64::max);
-        if end.is_finite() && start.is_finite() && end > start && view.shows(start) && view.shows(end) {
+        if let Some((start, end)) = lap_over(subject, support.centre).filter(|(start, end)| view.shows(*start) && view.shows(*end)) {
             level(paper, view, view.x(start), view.x(end), y, &format!("lap {}", mm(end - start)));
         }
     }

@@ -5,6 +5,7 @@ use super::bookmarks;
 use super::close_up::CloseUps;
 use super::column;
 use super::frame::{self, Title};
+use super::inner;
 use super::lists;
 use super::notes;
 use super::paper::{Area, Paper};
@@ -142,6 +143,11 @@ pub fn sheet(all: &Frame, subject: &Subject, choice: &Choice, number: usize, nei
         set.draw(&mut paper, &measure, subject, &area);
         if has_across {
             views.push(bands::across(&mut paper, &measure, subject, choice.low, rest.min));
+            rest.min[1] += needed[1] + 4.0;
+        }
+        let inner = inner::size(subject, &measure).filter(|s| s[0] <= rest.width() && s[1] <= rest.height());
+        if let Some(needed) = inner {
+            views.extend(inner::inner(&mut paper, &measure, subject, rest.min));
             rest.min[1] += needed[1] + 4.0;
         }
         if !in_column && lists::marks_height(&measure, subject.model) <= rest.height() {
