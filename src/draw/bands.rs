@@ -22,6 +22,10 @@ pub enum Band {
 pub const STACKED: &[&[Band]] = &[&[Band::BottomPlan, Band::TopPlan, Band::TopRows, Band::Section, Band::BottomRows]];
 pub const PAIRED: &[&[Band]] = &[&[Band::BottomPlan, Band::BottomRows], &[Band::TopPlan, Band::TopRows, Band::Section]];
 
+/// The bottom and the top on a sheet each, with the section.
+pub const BOTTOM: &[&[Band]] = &[&[Band::BottomPlan, Band::BottomRows, Band::Section]];
+pub const TOP: &[&[Band]] = &[&[Band::TopPlan, Band::TopRows, Band::Section]];
+
 /// Paper of the support stubs under the section, mm.
 pub(super) const STUBS: f64 = 10.0;
 /// Paper over a plan for the name of its far edge and the mark of the section across, mm.
@@ -112,11 +116,13 @@ pub struct Column<'a> {
     pub neighbours: &'a [Neighbour],
     /// Whether the sheet has the section across.
     pub has_across: bool,
+    /// Whether it is the first column of the sheet, which has the scale bar and the marks of the section across.
+    pub is_first: bool,
 }
 
 /// Draws a column of bands; returns the titles of its views with their places.
 pub fn draw(paper: &mut Paper, v: &View, subject: &Subject, column: &Column) -> Vec<(String, Area)> {
-    let Column { bands, gap, top, spread, neighbours, has_across } = *column;
+    let Column { bands, gap, top, spread, neighbours, has_across, is_first } = *column;
     heads(paper, v, subject, top);
     let x = v.x(v.low) - margin(v) + 2.0;
     let mut titles = Vec::new();
@@ -131,7 +137,7 @@ pub fn draw(paper: &mut Paper, v: &View, subject: &Subject, column: &Column) -> 
             Band::BottomPlan | Band::TopPlan => {
                 let face = if *band == Band::BottomPlan { Face::Bottom } else { Face::Top };
                 let within = Area::new([x - 2.0, y], [v.x(v.high) + margin(v) - 1.0, end + spread]);
-                let shows_across = has_across && face == Face::Bottom;
+                let shows_across = has_across && is_first && *band == bands[0];
                 PlanView { view: v, subject, face, top: at + OVER, gap, within, shows_across }.draw(paper);
             }
             Band::TopRows => Rows::of(subject, v, false).draw(paper, v, subject, at),
@@ -145,7 +151,7 @@ pub fn draw(paper: &mut Paper, v: &View, subject: &Subject, column: &Column) -> 
     for n in neighbours {
         match_line(paper, v, n.station, &n.grid, n.sheet, top + heads_height(v, subject), end);
     }
-    if bands.contains(&Band::BottomPlan) {
+    if is_first {
         scale_bar(paper, v, x, end + v.note + 3.0);
     }
     titles

@@ -1,7 +1,7 @@
 //! Which sheets a slab stands on: large scales and small sheets first, whole before in parts, until every text has a place of its own.
 //! What does not fit goes on a larger sheet, then at a smaller scale, then over several sheets cut at supports.
 
-use super::bands::{self, Band, Gap, Neighbour, PAIRED, STACKED, margin};
+use super::bands::{self, BOTTOM, Band, Gap, Neighbour, PAIRED, STACKED, TOP, margin};
 use super::plan_view::BREAK;
 use super::sheet::{Choice, Drawn, Frame, band_area, sheet};
 use super::view::{Subject, View};
@@ -17,13 +17,7 @@ pub fn sheets(job: &Job, model: &BarModel, checks: &[Vec<Check>]) -> Vec<Scene> 
     let subjects: Vec<Subject> = job.slabs.iter().zip(&model.slabs).map(|(slab, placed)| Subject::new(slab, placed)).collect();
     // Most slabs need one sheet: drawn as if all did, and anew only where that was wrong.
     let one_each = Frame { job, model, checks, of: subjects.len() };
-    let choose_all = |size: Option<&str>| subjects.iter().enumerate().map(|(i, s)| choose(&one_each, s, size, i + 1)).collect();
-    let mut chosen: Vec<(Vec<Choice>, Vec<Drawn>)> = choose_all(None);
-    // All sheets of a drawing have one size: the largest that one of them needs.
-    let sizes = || chosen.iter().flat_map(|(c, _)| c.iter().map(|c| c.size));
-    if let Some(largest) = sizes().max_by(|a, b| a.width.total_cmp(&b.width)).filter(|l| sizes().any(|s| s.name != l.name)) {
-        chosen = choose_all(Some(&largest.name));
-    }
+    let chosen: Vec<(Vec<Choice>, Vec<Drawn>)> = subjects.iter().enumerate().map(|(i, s)| choose(&one_each, s, i + 1)).collect();
     let of = chosen.iter().map(|(c, _)| c.len()).sum();
     if of == subjects.len() {
         return chosen.into_iter().flat_map(|(_, drawn)| drawn).map(|d| d.scene).collect();
@@ -38,9 +32,9 @@ pub fn sheets(job: &Job, model: &BarModel, checks: &[Vec<Check>]) -> Vec<Scene> 
 }
 
 /// The first way to draw a slab in which every text finds its place; where there is none, the one that leaves the fewest over.
-fn choose(all: &Frame, subject: &Subject, size: Option<&str>, first: usize) -> (Vec<Choice>, Vec<Drawn>) {
+fn choose(all: &Frame, subject: &Subject, first: usize) -> (Vec<Choice>, Vec<Drawn>) {
     let mut best: Option<(usize, Vec<Choice>, Vec<Drawn>)> = None;
-    for choices in ways(all.job, subject, size) {
+    for choices in ways(all.job, subject) {
         let drawn = draw(all, subject, &choices, first);
         if drawn.len() < choices.len() {
             continue;
@@ -66,10 +60,12 @@ fn draw(all: &Frame, subject: &Subject, choices: &[Choice], first: usize) -> Vec
             let at = subject.model.stations.supports.iter().position(|s| (s.centre - station).abs() < 0.5);
             at.and_then(|j| subject.model.grids.get(j)).cloned().unwrap_or_default()
         };
-        if i > 0 {
+        // Parts of the length meet at match lines; bottom and top of one length do not.
+        let goes_on = |a: usize, b: usize| choices[a].high < choices[b].low + 0.5;
+        if i > 0 && goes_on(i - 1, i) {
             neighbours.push(Neighbour { station: choice.low, grid: grid(choice.low), sheet: number - 1 });
         }
-        if i + 1 < choices.len() {
+        if i + 1 < choices.len() && goes_on(i, i + 1) {
             neighbours.push(Neighbour { station: choice.high, grid: grid(choice.high), sheet: number + 1 });
         }
         match sheet(all, subject, choice, number, &neighbours) {
@@ -81,41 +77,42 @@ fn draw(all: &Frame, subject: &Subject, choices: &[Choice], first: usize) -> Vec
 }
 
 /// What weighs against a sheet: small scales are hard to read, large sheets hard to handle. An A3 at 1:50 comes before an A1 at 1:20,
-/// an A1 at 1:50 before an A3 at 1:100 (our own judgement).
-fn burden(size: &SheetSize, scale: f64) -> f64 {
-    let of_scale = match scale as u32 {
+/// an A1 at 1:50 before an A3 at 1:100, two A1 at 1:50 before one at 1:100 (our own judgement).
+fn burden(way: &[Choice]) -> f64 {
+    let Some(first) = way.first() else { return f64::INFINITY };
+    let of_scale = match first.scale as u32 {
         0..=20 => 0.0,
         21..=25 => 0.2,
         26..=50 => 1.0,
         _ => 3.0,
     };
-    let of_size = match size.name.as_str() {
+    let of_size = match first.size.name.as_str() {
         "A3" => 0.0,
         "A2" => 0.9,
         _ => 1.9,
     };
-    of_scale + of_size
+    of_scale + of_size + 1.2 * (way.len() - 1) as f64
 }
 
 /// Ways to set a slab on sheets, the best first, each once.
-fn ways(job: &Job, subject: &Subject, size: Option<&str>) -> Vec<Vec<Choice>> {
+fn ways(job: &Job, subject: &Subject) -> Vec<Vec<Choice>> {
     let all = &tables().sheets;
     let sizes: Vec<&'static SheetSize> = ["A3", "A2", "A1"]
         .iter()
-        .filter(|name| size.or(job.head.sheet.as_deref()).is_none_or(|wanted| wanted == **name))
+        .filter(|name| job.head.sheet.as_deref().is_none_or(|wanted| wanted == **name))
         .filter_map(|name| all.sizes.iter().find(|s| s.name == **name))
         .collect();
     let scales: Vec<f64> = all.scales.iter().filter(|s| job.head.scale.is_none_or(|wanted| wanted == **s)).map(|s| f64::from(*s)).collect();
     let st = &subject.model.stations;
     let (low, high) = (st.start.min(st.supports[0].centre), st.end.max(st.supports[st.last()].centre));
     let mut ways = Vec::new();
-    let mut whole: Vec<(&&'static SheetSize, f64)> = sizes.iter().cartesian_product(scales.iter().copied()).collect();
-    whole.sort_by(|a, b| burden(a.0, a.1).total_cmp(&burden(b.0, b.1)));
-    for (size, scale) in whole {
-        for columns in [STACKED, PAIRED] {
-            ways.push(vec![Choice { size, scale, low, high, gap: None, columns }]);
-        }
+    let whole: [&[&[&[Band]]]; 3] = [&[STACKED], &[PAIRED], &[BOTTOM, TOP]];
+    for (scale, size) in scales.iter().copied().cartesian_product(&sizes) {
+        ways.extend(whole.iter().map(|sheets| {
+            sheets.iter().map(|columns| Choice { size, scale, low, high, gap: None, columns, close_ups: *columns != BOTTOM }).collect::<Vec<_>>()
+        }));
     }
+    ways.sort_by(|a, b| burden(a).total_cmp(&burden(b)));
     let Some(size) = sizes.last() else { return ways };
     let mut add = |way: Vec<Choice>| {
         if !ways.iter().any(|known| same(known, &way)) {
@@ -130,7 +127,7 @@ fn ways(job: &Job, subject: &Subject, size: Option<&str>) -> Vec<Vec<Choice>> {
                 let room = band_area(size).width() / columns.len() as f64 - 2.0 * margin(&v);
                 let parts = windows(subject, low, high, room * scale * share);
                 let gap = gap(subject, &v, size, columns);
-                add(parts.into_iter().map(|(low, high)| Choice { size, scale: *scale, low, high, gap, columns }).collect());
+                add(parts.into_iter().map(|(low, high)| Choice { size, scale: *scale, low, high, gap, columns, close_ups: true }).collect());
             }
         }
     }
@@ -139,7 +136,7 @@ fn ways(job: &Job, subject: &Subject, size: Option<&str>) -> Vec<Vec<Choice>> {
 
 fn same(one: &[Choice], other: &[Choice]) -> bool {
     let alike = |(a, b): (&Choice, &Choice)| {
-        a.size.name == b.size.name && a.scale == b.scale && a.low == b.low && a.high == b.high && a.gap == b.gap && a.columns.len() == b.columns.len()
+        a.size.name == b.size.name && a.scale == b.scale && a.low == b.low && a.high == b.high && a.gap == b.gap && a.columns == b.columns
     };
     one.len() == other.len() && one.iter().zip(other).all(alike)
 }

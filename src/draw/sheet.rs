@@ -25,6 +25,8 @@ pub struct Choice {
     pub high: f64,
     pub gap: Gap,
     pub columns: &'static [&'static [Band]],
+    /// Whether the close-ups stand here; of a bottom and a top sheet, on the second.
+    pub close_ups: bool,
 }
 
 /// What every sheet of a job shares.
@@ -84,6 +86,9 @@ fn layout(subject: &Subject, choice: &Choice, v: &View) -> Option<Layout> {
         let each = |(h, c): (&f64, &&[Band])| ((room - h) / c.len() as f64).clamp(0.0, SPREAD);
         heights.iter().zip(choice.columns).map(each).collect()
     };
+    if !choice.close_ups {
+        return Some(Layout { spread: spread_in(area.height()), beside: None });
+    }
     let right = Area::new([area.min[0] + width + BESIDE, area.min[1]], area.max);
     let set = CloseUps::in_area(subject, v, right.width()).filter(|c| right.width() >= 34.0 * v.note && c.height() <= right.height());
     if set.is_some() {
@@ -114,7 +119,12 @@ pub fn sheet(all: &Frame, subject: &Subject, choice: &Choice, number: usize, nei
     let levels = level_scale(choice.scale);
     let title = Title {
         size,
-        scales: format!("plans and stations 1:{}, levels 1:{levels}, close-ups as titled, at {}", choice.scale, size.name),
+        scales: format!(
+            "plans and stations 1:{}, levels 1:{levels}{}, at {}",
+            choice.scale,
+            if choice.close_ups { ", close-ups as titled" } else { "" },
+            size.name
+        ),
         number,
         of: all.of,
         document: "Reinforcement drawing",
@@ -136,7 +146,7 @@ pub fn sheet(all: &Frame, subject: &Subject, choice: &Choice, number: usize, nei
     for (i, (bands, spread)) in choice.columns.iter().zip(&layout.spread).enumerate() {
         let before = neighbours.iter().find(|n| n.station < (choice.low + choice.high) / 2.0).map(|n| n.sheet);
         let view = View { before, ..View::new(size, choice.scale, choice.low, choice.high, area.min[0] + i as f64 * width + margin(&measure)) };
-        let column = bands::Column { bands, gap: choice.gap, top: area.min[1], spread: *spread, neighbours, has_across };
+        let column = bands::Column { bands, gap: choice.gap, top: area.min[1], spread: *spread, neighbours, has_across, is_first: i == 0 };
         views.extend(bands::draw(&mut paper, &view, subject, &column));
     }
     if let (Some((area, set)), Some(mut rest)) = (beside, across) {
@@ -165,7 +175,7 @@ pub fn sheet(all: &Frame, subject: &Subject, choice: &Choice, number: usize, nei
 /// them. None where close-ups find no room.
 fn fill_column(paper: &mut Paper, all: &Frame, subject: &Subject, choice: &Choice, v: &View, column: &Area, layout: &Layout) -> Option<(f64, bool)> {
     let mut y = column.min[1];
-    if layout.beside.is_none() {
+    if layout.beside.is_none() && choice.close_ups {
         let set = CloseUps::in_area(subject, v, column.width())?;
         set.draw(paper, v, subject, &Area::new([column.min[0], y], column.max));
         y += set.height();
@@ -174,7 +184,9 @@ fn fill_column(paper: &mut Paper, all: &Frame, subject: &Subject, choice: &Choic
     y = column::legend(paper, v, subject, column, y);
     y = column::notes(paper, v, &notes::notes(all.job, subject.slab, subject.model), column, y);
     y = lists::schedules(paper, v, all.job, all.model, column, y);
-    if all.of > 1 || all.model.slabs.len() > 1 {
+    let st = &subject.model.stations;
+    let is_part = choice.low > st.supports[0].centre.max(st.start) + 0.5 || choice.high < st.supports[st.last()].centre.min(st.end) - 0.5;
+    if is_part || all.model.slabs.len() > 1 {
         y = lists::key_plan(paper, v, all.model, (&subject.slab.mark, choice.low, choice.high), column, y);
     }
     let has_room = y + lists::marks_height(v, subject.model) <= column.max[1] - 14.0;
