@@ -7,6 +7,7 @@ use super::view::{Occurrence, View};
 use crate::base::num;
 use crate::plan::Role;
 use crate::scene::{Layer, Pen};
+use itertools::Itertools;
 
 /// Paper between two bars that stand side by side, mm.
 const LANE: f64 = 4.2;
@@ -165,21 +166,23 @@ impl PlanView<'_> {
     /// Laps of the pieces of bars held along each side edge, dimensioned inside the slab.
     fn held_laps(&self, paper: &mut Paper, held: &[&Occurrence]) {
         let v = self.view;
+        let level_of = |o: &Occurrence| o.sets.first().map_or(0, |s| s.axis[0][2].round() as i64);
         for is_near in [true, false] {
             let on_side = |o: &&&Occurrence| o.lines(1).iter().any(|across| (*across < self.width() / 2.0) == is_near);
-            let mut pieces: Vec<(&str, (f64, f64))> = held.iter().filter(on_side).map(|o| (o.bar.mark.as_str(), o.extent())).collect();
-            pieces.sort_by(|a, b| a.1.0.total_cmp(&b.1.0));
-            pieces.dedup_by(|a, b| a.1 == b.1);
+            let own: Vec<&&Occurrence> = held.iter().filter(on_side).collect();
             let y = if is_near { self.top + self.height() - HELD_LAP } else { self.top + HELD_LAP };
             let mut known: Vec<f64> = Vec::new();
-            for pair in pieces.windows(2) {
-                let (from, to) = (pair[1].1.0, pair[0].1.1);
-                // Equal laps of one edge are dimensioned once.
-                let is_new = known.iter().all(|lap| (lap - (to - from)).abs() > 1.0);
-                if to > from && is_new && v.shows(from) && v.shows(to) {
-                    known.push(to - from);
-                    let marks = if pair[0].0 == pair[1].0 { pair[0].0.to_string() } else { format!("{}, {}", pair[0].0, pair[1].0) };
-                    level(paper, v, v.x(from), v.x(to), y, &format!("{marks} lap {}", num(to - from, 0)));
+            for z in own.iter().map(|o| level_of(o)).sorted().dedup() {
+                let line = own.iter().filter(|o| level_of(o) == z).map(|o| (o.bar.mark.as_str(), o.extent()));
+                for (before, after) in line.sorted_by(|a, b| a.1.0.total_cmp(&b.1.0)).tuple_windows() {
+                    let (from, to) = (after.1.0, before.1.1);
+                    // Equal laps of one edge are dimensioned once.
+                    let is_new = known.iter().all(|lap| (lap - (to - from)).abs() > 1.0);
+                    if to > from && is_new && v.shows(from) && v.shows(to) {
+                        known.push(to - from);
+                        let marks = if before.0 == after.0 { before.0.to_string() } else { format!("{}, {}", before.0, after.0) };
+                        level(paper, v, v.x(from), v.x(to), y, &format!("{marks} lap {}", num(to - from, 0)));
+                    }
                 }
             }
         }

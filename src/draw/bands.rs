@@ -6,7 +6,9 @@ use super::plan_view::{BREAK, Face, PlanView};
 use super::rows::Rows;
 use super::section::{Cut, name_layers};
 use super::view::{Subject, View};
+use crate::plan::Layer;
 use crate::tables::font::face;
+use itertools::Itertools;
 
 /// One band of the sheet.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -83,7 +85,12 @@ fn name(subject: &Subject, v: &View, gap: Gap, band: Band) -> (String, String) {
     let broken = if gap.is_some() { ", broken across" } else { "" };
     match band {
         Band::BottomPlan => (format!("Slab {name}: BOTTOM  B1 and B2"), format!("plan 1:{scale}{broken}")),
-        Band::TopPlan => (format!("Slab {name}: TOP  T1, T2, ends and edges"), format!("plan 1:{scale}{broken}")),
+        Band::TopPlan => {
+            let has = |layer: Layer| subject.model.bars.iter().any(|b| b.layer == layer);
+            let layers =
+                [(Layer::T1, "T1"), (Layer::T2, "T2"), (Layer::E, "ends and edges")].into_iter().filter(|(l, _)| has(*l)).map(|(_, name)| name).join(", ");
+            (format!("Slab {name}: TOP  {layers}"), format!("plan 1:{scale}{broken}"))
+        }
         Band::TopRows => ("Top bars drawn out".into(), format!("stations 1:{scale}, uprights not to scale")),
         Band::Section => ("Section A-A, along the span".into(), format!("stations 1:{scale}, levels 1:{}", level_scale(scale))),
         Band::BottomRows => ("Bottom bars drawn out".into(), format!("stations 1:{scale}")),
