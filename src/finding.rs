@@ -83,5 +83,6 @@ pub const KINDS: &[Kind] = &[
     Kind { code: "rule-load", text: "rule sheet: variable load", cite: rule("D12") },
     Kind { code: "rule-span-count", text: "rule sheet: number of spans", cite: rule("D12") },
     Kind { code: "rule-redistribution", text: "rule sheet: designed for all spans loaded with this redistribution; an assumption", cite: rule("D12") },
+    Kind { code: "sheet-texts", text: "texts of the sheets without a free place", cite: cite("practice", "") },
     Kind { code: "sheet-marks", text: "every scheduled mark stands on the sheet with its number", cite: rule("D15") },
 ];

@@ -68,13 +68,18 @@ impl IssueSet {
         Ok(files)
     }
 
-    /// Checks that every mark of the schedule is called out on a sheet with its number; returns whether one is not.
+    /// Checks that every mark of the schedule is called out on a sheet with its number, and that every text has a place of its own; returns
+    /// whether one has not.
     fn reconcile(&mut self, sheets: &[Scene]) -> bool {
         let drawn = drawn_numbers(sheets);
         let mut missing = false;
         for (slab, checks) in self.model.slabs.iter().zip(&mut self.checks) {
             // The documents may be asked for more than once.
-            checks.retain(|c| c.code != "sheet-marks");
+            checks.retain(|c| c.code != "sheet-marks" && c.code != "sheet-texts");
+            let crowded: usize = sheets.iter().filter(|s| s.slab == slab.mark).map(|s| s.unplaced.len()).sum();
+            let verdict = if crowded == 0 { Verdict::Pass } else { Verdict::Fail };
+            missing |= verdict == Verdict::Fail;
+            checks.push(audit::check("sheet-texts", verdict, format!("{}/sheets", slab.mark), crowded as f64, 0.0, ""));
             for bar in &slab.bars {
                 let number = drawn.get(&bar.mark).copied().unwrap_or(0);
                 let verdict = if number == bar.each() { Verdict::Pass } else { Verdict::Fail };

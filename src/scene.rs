@@ -123,6 +123,10 @@ pub struct Scene {
     pub height: f64,
     /// In reading order; a bookmark stands under the last one before it of a lower level.
     pub bookmarks: Vec<Bookmark>,
+    /// Mark of the slab that a sheet shows; empty on other pages.
+    pub slab: String,
+    /// Texts that found no free place: they stand on something.
+    pub unplaced: Vec<String>,
     pub rows: Vec<Row>,
     /// What the bars of each mark are for, such as `span-bottom`.
     pub roles: BTreeMap<String, String>,

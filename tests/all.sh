@@ -30,5 +30,5 @@ cargo test --locked
 mkdir -p samples/pictures
 for job in samples/*.toml; do
   name="$(basename "$job" .toml)"
-  pdftoppm -r 50 -gray -png -singlefile "samples/$name/"*-sheet.pdf "samples/pictures/$name"
+  pdftoppm -r 75 -gray -png -singlefile "samples/$name/"*-sheet.pdf "samples/pictures/$name"
 done

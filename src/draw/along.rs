@@ -30,7 +30,14 @@ impl PlanView<'_> {
         self.ends(paper, &sets, &heights);
         for (order, (occurrence, y)) in sets.iter().zip(&heights).enumerate() {
             // The two ways round of a turned mark are one set: one line through both bars.
-            let is_turned = |i: &usize| sets[*i].bar.mark == occurrence.bar.mark && sets[*i].zone == occurrence.zone && *i != order;
+            let beside = |o: &Occurrence| {
+                let (low, high) = (o.extent().0.max(occurrence.extent().0), o.extent().1.min(occurrence.extent().1));
+                low < high && self.view.clip(low, high).is_some()
+            };
+            let is_turned = |i: &usize| {
+                let other = sets[*i];
+                *i != order && other.bar.mark == occurrence.bar.mark && other.zone == occurrence.zone && other.turn() == "alt rev" && beside(other)
+            };
             let pair = (0..sets.len()).find(is_turned);
             if pair.is_none_or(|other| other > order) {
                 self.zone_along(paper, occurrence, *y, order, &sets, pair.map(|other| (sets[other], heights[other])));
@@ -55,7 +62,8 @@ impl PlanView<'_> {
             };
             let mut taken: Vec<f64> = done.iter().filter(beside).map(|j| heights[*j]).collect();
             taken.sort_by(f64::total_cmp);
-            let bars: Vec<f64> = sets[i].lines(1).into_iter().map(|across| self.y(across)).collect();
+            let in_gap = |across: f64| self.gap.is_some_and(|(from, to)| across > from && across < to);
+            let bars: Vec<f64> = sets[i].lines(1).into_iter().filter(|across| !in_gap(*across)).map(|across| self.y(across)).collect();
             let is_clear = |y: f64| taken.iter().all(|t| (t - y).abs() >= LANE - 0.01);
             let below = bars.iter().copied().filter(|y| *y >= first - 0.01 && is_clear(*y)).min_by(f64::total_cmp);
             let above = || bars.iter().copied().filter(|y| is_clear(*y)).max_by(f64::total_cmp);

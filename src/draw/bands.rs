@@ -20,6 +20,18 @@ pub enum Band {
     BottomRows,
 }
 
+impl Band {
+    pub fn word(self) -> &'static str {
+        match self {
+            Band::BottomPlan => "bottom plan",
+            Band::TopPlan => "top plan",
+            Band::TopRows => "top bars drawn out",
+            Band::Section => "section along the span",
+            Band::BottomRows => "bottom bars drawn out",
+        }
+    }
+}
+
 /// All bands on one station line; or the bottom beside the top, each plan over its own bars drawn out.
 pub const STACKED: &[&[Band]] = &[&[Band::BottomPlan, Band::TopPlan, Band::TopRows, Band::Section, Band::BottomRows]];
 pub const PAIRED: &[&[Band]] = &[&[Band::BottomPlan, Band::BottomRows], &[Band::TopPlan, Band::TopRows, Band::Section]];
@@ -93,7 +105,10 @@ fn name(subject: &Subject, v: &View, gap: Gap, band: Band) -> (String, String) {
         }
         Band::TopRows => ("Top bars drawn out".into(), format!("stations 1:{scale}, uprights not to scale")),
         Band::Section => ("Section A-A, along the span".into(), format!("stations 1:{scale}, levels 1:{}", level_scale(scale))),
-        Band::BottomRows => ("Bottom bars drawn out".into(), format!("stations 1:{scale}")),
+        Band::BottomRows => {
+            let bent = subject.model.bars.iter().any(|b| b.layer == Layer::B1 && !b.is_straight());
+            ("Bottom bars drawn out".into(), format!("stations 1:{scale}{}", if bent { ", uprights not to scale" } else { "" }))
+        }
     }
 }
 
@@ -149,7 +164,7 @@ pub fn draw(paper: &mut Paper, v: &View, subject: &Subject, column: &Column) -> 
             }
             Band::TopRows => Rows::of(subject, v, false).draw(paper, v, subject, at),
             Band::BottomRows => Rows::of(subject, v, true).draw(paper, v, subject, at),
-            Band::Section => section(paper, v, subject, at + section_drop(subject, v)),
+            Band::Section => section(paper, v, subject, gap, at + section_drop(subject, v)),
         }
         y = end + spread;
     }
@@ -164,11 +179,19 @@ pub fn draw(paper: &mut Paper, v: &View, subject: &Subject, column: &Column) -> 
     titles
 }
 
-fn section(paper: &mut Paper, v: &View, subject: &Subject, top: f64) {
-    let low = v.low.min(subject.model.stations.supports[0].left_face.max(v.low - 200.0));
+/// Where the section along the span is cut, mm across the slab: clear of what a broken view leaves out.
+pub fn section_across(subject: &Subject, gap: Gap) -> f64 {
+    0.3 * (subject.slab.width.value - gap.map_or(0.0, |(from, to)| to - from))
+}
+
+fn section(paper: &mut Paper, v: &View, subject: &Subject, gap: Gap, top: f64) {
+    let st = &subject.model.stations;
+    // A support that reaches past the slab is shown at the slab's own ends.
+    let low = if v.low <= st.start + 0.5 { v.low.min(st.supports[0].left_face.max(v.low - 200.0)) } else { v.low };
+    let high = if v.high >= st.end - 0.5 { v.high.max(st.supports[st.last()].right_face.min(v.high + 200.0)) } else { v.high };
     let levels = level_scale(v.scale);
-    let at = 0.3 * subject.slab.width.value;
-    let cut = Cut { subject, axis: 0, low, high: v.high, at, scale: v.scale, level_scale: levels, corner: [v.x(low), top], apart: false };
+    let at = section_across(subject, gap);
+    let cut = Cut { subject, axis: 0, low, high, at, scale: v.scale, level_scale: levels, corner: [v.x(low), top], apart: false };
     cut.draw(paper, v, STUBS - 4.0);
     name_layers(paper, v, &cut);
 }

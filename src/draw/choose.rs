@@ -3,7 +3,7 @@
 
 use super::bands::{self, BOTTOM, Band, Gap, Neighbour, PAIRED, STACKED, TOP, margin};
 use super::plan_view::BREAK;
-use super::sheet::{Choice, Drawn, Frame, band_area, sheet};
+use super::sheet::{Choice, Frame, band_area, sheet};
 use super::view::{Subject, View};
 use crate::finding::Check;
 use crate::job::Job;
@@ -17,41 +17,49 @@ pub fn sheets(job: &Job, model: &BarModel, checks: &[Vec<Check>]) -> Vec<Scene> 
     let subjects: Vec<Subject> = job.slabs.iter().zip(&model.slabs).map(|(slab, placed)| Subject::new(slab, placed)).collect();
     // Most slabs need one sheet: drawn as if all did, and anew only where that was wrong.
     let one_each = Frame { job, model, checks, of: subjects.len() };
-    let chosen: Vec<(Vec<Choice>, Vec<Drawn>)> = subjects.iter().enumerate().map(|(i, s)| choose(&one_each, s, i + 1)).collect();
+    let chosen: Vec<(Vec<Choice>, Vec<Scene>)> = subjects.iter().enumerate().map(|(i, s)| choose(&one_each, s, i + 1)).collect();
     let of = chosen.iter().map(|(c, _)| c.len()).sum();
     if of == subjects.len() {
-        return chosen.into_iter().flat_map(|(_, drawn)| drawn).map(|d| d.scene).collect();
+        return chosen.into_iter().flat_map(|(_, drawn)| drawn).collect();
     }
     let all = Frame { of, ..one_each };
     let mut scenes = Vec::new();
     for (subject, (choices, _)) in subjects.iter().zip(&chosen) {
         let first = scenes.len() + 1;
-        scenes.extend(draw(&all, subject, choices, first).into_iter().map(|d| d.scene));
+        scenes.extend(draw(&all, subject, choices, first, usize::MAX));
     }
     scenes
 }
 
-/// The first way to draw a slab in which every text finds its place; where there is none, the one that leaves the fewest over.
-fn choose(all: &Frame, subject: &Subject, first: usize) -> (Vec<Choice>, Vec<Drawn>) {
-    let mut best: Option<(usize, Vec<Choice>, Vec<Drawn>)> = None;
-    for choices in ways(all.job, subject) {
-        let drawn = draw(all, subject, &choices, first);
-        if drawn.len() < choices.len() {
-            continue;
+/// The first way to draw a slab in which every text finds its place; where there is none, the one that leaves the fewest over. A sheet
+/// or scale that the job asks for and that cannot hold the slab is given up, the scale first: the title block says which was taken.
+fn choose(all: &Frame, subject: &Subject, first: usize) -> (Vec<Choice>, Vec<Scene>) {
+    let head = &all.job.head;
+    let mut best: Option<(usize, Vec<Choice>, Vec<Scene>)> = None;
+    for (size, scale) in [(head.sheet.as_deref(), head.scale), (head.sheet.as_deref(), None), (None, None)] {
+        for choices in ways(subject, size, scale) {
+            let least = best.as_ref().map_or(usize::MAX, |(least, _, _)| *least);
+            let drawn = draw(all, subject, &choices, first, least);
+            if drawn.len() < choices.len() {
+                continue;
+            }
+            let unplaced = drawn.iter().map(|d| d.unplaced.len()).sum();
+            if unplaced == 0 {
+                return (choices, drawn);
+            }
+            if unplaced < least {
+                best = Some((unplaced, choices, drawn));
+            }
         }
-        let unplaced = drawn.iter().map(|d| d.unplaced.len()).sum();
-        if unplaced == 0 {
-            return (choices, drawn);
-        }
-        if best.as_ref().is_none_or(|(least, _, _)| unplaced < *least) {
-            best = Some((unplaced, choices, drawn));
+        if best.is_some() {
+            break;
         }
     }
     best.map(|(_, choices, drawn)| (choices, drawn)).unwrap_or_default()
 }
 
-/// The sheets of one way, numbered from `first`; fewer than asked where one does not fit.
-fn draw(all: &Frame, subject: &Subject, choices: &[Choice], first: usize) -> Vec<Drawn> {
+/// The sheets of one way, numbered from `first`; fewer than asked where one does not fit, or where `most` texts or more have no place.
+fn draw(all: &Frame, subject: &Subject, choices: &[Choice], first: usize, most: usize) -> Vec<Scene> {
     let mut drawn = Vec::new();
     for (i, choice) in choices.iter().enumerate() {
         let number = first + i;
@@ -71,6 +79,9 @@ fn draw(all: &Frame, subject: &Subject, choices: &[Choice], first: usize) -> Vec
         match sheet(all, subject, choice, number, &neighbours) {
             Some(done) => drawn.push(done),
             None => break,
+        }
+        if drawn.iter().map(|d: &Scene| d.unplaced.len()).sum::<usize>() >= most {
+            break;
         }
     }
     drawn
@@ -95,14 +106,14 @@ fn burden(way: &[Choice]) -> f64 {
 }
 
 /// Ways to set a slab on sheets, the best first, each once.
-fn ways(job: &Job, subject: &Subject) -> Vec<Vec<Choice>> {
+fn ways(subject: &Subject, size: Option<&str>, scale: Option<u32>) -> Vec<Vec<Choice>> {
     let all = &tables().sheets;
     let sizes: Vec<&'static SheetSize> = ["A3", "A2", "A1"]
         .iter()
-        .filter(|name| job.head.sheet.as_deref().is_none_or(|wanted| wanted == **name))
+        .filter(|name| size.is_none_or(|wanted| wanted == **name))
         .filter_map(|name| all.sizes.iter().find(|s| s.name == **name))
         .collect();
-    let scales: Vec<f64> = all.scales.iter().filter(|s| job.head.scale.is_none_or(|wanted| wanted == **s)).map(|s| f64::from(*s)).collect();
+    let scales: Vec<f64> = all.scales.iter().filter(|s| scale.is_none_or(|wanted| wanted == **s)).map(|s| f64::from(*s)).collect();
     let st = &subject.model.stations;
     let (low, high) = (st.start.min(st.supports[0].centre), st.end.max(st.supports[st.last()].centre));
     let mut ways = Vec::new();

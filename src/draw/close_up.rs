@@ -51,7 +51,7 @@ fn corners(subject: &Subject, v: &View) -> Vec<Corner> {
     }
     // Of a slab in parts, each sheet has the end that it shows.
     let shows = |c: &Corner| c.axis == 1 || v.shows(if c.at_start { st.start.max(st.supports[0].centre) } else { st.end.min(st.supports[st.last()].centre) });
-    if list.iter().any(&shows) && list.iter().filter(|c| c.axis == 0).count() == 2 {
+    if list.iter().filter(|c| c.axis == 0).count() == 2 {
         list.retain(shows);
     }
     let name = |at: usize| grids.get(at).map_or("", String::as_str);
@@ -78,6 +78,12 @@ fn signature(subject: &Subject, corner: &Corner) -> Vec<String> {
     }
     let held = cut.holders().into_iter().filter(|(a, b)| near(*a) || near(*b)).map(|(a, b)| format!("{:.0}", b.min(to) - a.max(from)));
     parts.extend(held);
+    let supports = &subject.slab.supports;
+    parts.push(match (corner.axis, corner.at_start) {
+        (0, true) => format!("{:?}", supports.first().map(|s| s.kind)),
+        (0, false) => format!("{:?}", supports.last().map(|s| s.kind)),
+        (_, at_start) => subject.slab.edges[usize::from(!at_start)].word().to_string(),
+    });
     parts.sort();
     parts.dedup();
     parts
@@ -204,7 +210,7 @@ fn legs(paper: &mut Paper, v: &View, cut: &Cut, corner: &Corner) {
     let inward = if corner.at_start { 1.0 } else { -1.0 };
     let line = v.note + 3.2;
     let mut legs: Vec<Leg> = Vec::new();
-    let mut uprights: Vec<(f64, f64)> = Vec::new();
+    let mut uprights: Vec<(&str, (f64, f64))> = Vec::new();
     for (bar, set) in in_plane(cut) {
         let half = f64::from(bar.size) / 2.0;
         for (i, w) in set.axis.windows(2).enumerate() {
@@ -213,7 +219,14 @@ fn legs(paper: &mut Paper, v: &View, cut: &Cut, corner: &Corner) {
                 continue;
             }
             let outer = w[0][cut.axis] - inward * half;
-            uprights.push((w[0][2].min(w[1][2]) - half, w[0][2].max(w[1][2]) + half));
+            // A leg that ends free is as high as its centre line; one that turns is measured over its bend.
+            let reach = |p: &[f64; 3], turns: bool, sign: f64| p[2] + if turns { sign * half } else { 0.0 };
+            let up = (w[1][2] - w[0][2]).signum();
+            let ends = [reach(&w[0], i > 0, -up), reach(&w[1], i + 2 < set.axis.len(), up)];
+            let height = (ends[0].min(ends[1]), ends[0].max(ends[1]));
+            if uprights.iter().all(|(mark, _)| *mark != bar.mark.as_str()) {
+                uprights.push((&bar.mark, height));
+            }
             let before = i.checked_sub(1).and_then(|j| set.axis.get(j)).map(|p| (p[cut.axis], w[0][2]));
             let after = set.axis.get(i + 2).map(|p| (p[cut.axis], w[1][2]));
             let level = before.into_iter().chain(after).filter(|_| bar.layer != BarLayer::B1);
@@ -236,6 +249,10 @@ fn legs(paper: &mut Paper, v: &View, cut: &Cut, corner: &Corner) {
         rows
     };
     for (a, b) in cut.holders() {
+        // An inner support within the view has no bearing.
+        if a > from + 0.5 && b < to - 0.5 {
+            continue;
+        }
         let (a, b) = (a.max(from), b.min(to));
         if a >= cut.low - 0.5 && b <= cut.high + 0.5 && b > a {
             level(paper, v, cut.x(a), cut.x(b), next(), &format!("bearing {}", mm(b - a)));
@@ -245,12 +262,14 @@ fn legs(paper: &mut Paper, v: &View, cut: &Cut, corner: &Corner) {
         leg_dimension(paper, v, cut, leg, next(), inward);
         lap(paper, v, cut, leg, next(), inward);
     }
-    uprights.sort_by(|a, b| (b.1 - b.0).total_cmp(&(a.1 - a.0)));
-    if let Some((low, high)) = uprights.first() {
-        let outside = if corner.at_start { cut.low } else { cut.high };
-        let x = cut.x(outside) - inward * 4.5;
-        let from_x = cut.x(face) - inward * 0.8;
-        upright(paper, v, x, cut.y(*high), cut.y(*low), from_x, &mm(high - low));
+    uprights.sort_by(|a, b| (b.1.1 - b.1.0).total_cmp(&(a.1.1 - a.1.0)));
+    uprights.dedup_by(|a, b| a.1 == b.1);
+    let outside = if corner.at_start { cut.low } else { cut.high };
+    for (i, (mark, (low, high))) in uprights.iter().take(2).enumerate() {
+        let x = cut.x(outside) - inward * (4.5 + i as f64 * 1.6 * v.note);
+        let height = mm(high - low);
+        let text = if uprights.len() > 1 { format!("{mark} {height}") } else { height };
+        upright(paper, v, x, cut.y(*high), cut.y(*low), cut.x(face) - inward * 0.8, &text);
     }
 }
 

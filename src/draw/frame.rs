@@ -147,7 +147,7 @@ fn revisions(paper: &mut Paper, job: &Job, title: &Title, x0: f64, width: f64, b
     y
 }
 
-/// Text of a field: as high as wished, lower where it would not fit, but never under the least of the sheet; then cut at a word.
+/// Text of a field: as high as wished, lower where it would not fit, but never under the least of the sheet; then cut short.
 fn fitted(paper: &mut Paper, at: [f64; 2], room: f64, height: f64, least: f64, text: &str) {
     let width = |h: f64, text: &str| text_area([0.0, 0.0], h, text, Anchor::Start, false).width();
     let fits = [height, 5.0, 3.5, 2.5, 1.8].into_iter().filter(|h| *h <= height && *h >= least).find(|h| width(*h, text) <= room);
@@ -156,7 +156,7 @@ fn fitted(paper: &mut Paper, at: [f64; 2], room: f64, height: f64, least: f64, t
     paper.text(&lettering, Spot::level(at, Anchor::Start), &shown);
 }
 
-/// As many words as fit, with dots for the rest.
+/// As many letters as fit, with dots for the rest.
 fn shortened(text: &str, fits: impl Fn(&str) -> bool) -> String {
     let mut short: Vec<char> = text.chars().collect();
     while !short.is_empty() {

@@ -49,7 +49,8 @@ pub fn heads(paper: &mut Paper, v: &View, subject: &Subject, top: f64) {
     faces.extend(st.spans.iter().flat_map(|s| [s.left_face, s.right_face]));
     faces.push(st.end);
     for w in faces.windows(2) {
-        if v.shows(w[0]) && v.shows(w[1]) && w[1] - w[0] > 0.5 {
+        let ends_here = v.shows(w[1]) || w[1] - w[0] < super::rows::PAST && w[1] < v.high + super::rows::PAST;
+        if v.shows(w[0]) && w[0] < v.high - 0.5 && ends_here && w[1] - w[0] > 0.5 {
             level(paper, v, v.x(w[0]), v.x(w[1]), second, &mm(w[1] - w[0]));
         }
     }

@@ -7,6 +7,7 @@ use crate::base::num;
 use crate::job::Job;
 use crate::place::{BarModel, SlabModel};
 use crate::scene::{Anchor, Layer, Pen};
+use crate::tables::font::face;
 
 /// Columns of the list of marks: head, share of the width, whether it is a figure.
 const COLUMNS: [(&str, f64, bool); 7] = [
@@ -56,11 +57,6 @@ pub fn marks(paper: &mut Paper, v: &View, model: &SlabModel, area: &Area, top: f
     }
 }
 
-/// Paper height of the list of schedules, mm.
-pub fn schedules_height(v: &View) -> f64 {
-    v.call_out * 1.25 + 3.1 + 2.0 * line_step(v) + 4.0
-}
-
 /// Which schedule lists the bars of this drawing, with its marks, numbers and mass.
 pub fn schedules(paper: &mut Paper, v: &View, job: &Job, model: &BarModel, area: &Area, top: f64) -> f64 {
     let y = heading(paper, v, area, top, "Schedules of this drawing");
@@ -78,19 +74,24 @@ pub fn schedules(paper: &mut Paper, v: &View, job: &Job, model: &BarModel, area:
 
 const KEY: f64 = 24.0;
 
-/// Paper height of the key plan, mm.
-pub fn key_plan_height(v: &View) -> f64 {
-    v.call_out * 1.25 + 3.1 + KEY + v.note + 6.0
+fn named(slab: &SlabModel) -> String {
+    if slab.members > 1 { format!("{} x {}", slab.mark, slab.members) } else { slab.mark.clone() }
 }
 
 /// The slabs of the drawing side by side at one scale, what this sheet shows hatched.
 pub fn key_plan(paper: &mut Paper, v: &View, model: &BarModel, shown: (&str, f64, f64), area: &Area, top: f64) -> f64 {
-    let y = heading(paper, v, area, top, "Key plan: slabs of this drawing, not set out");
+    let y = top;
     let gap = 6.0;
     let lengths: Vec<f64> = model.slabs.iter().map(|s| s.stations.end - s.stations.start).collect();
     let widest = model.slabs.iter().map(|s| s.width).fold(1.0, f64::max);
     let total: f64 = lengths.iter().sum::<f64>().max(1.0);
     let scale = ((area.width() - gap * lengths.len() as f64) / total).min(KEY / widest);
+    let names: f64 = model.slabs.iter().map(|s| face().width(&named(s), v.note) + gap).sum();
+    // Too many slabs for one row of boxes: the sheet titles tell them apart.
+    if scale <= 0.0 || names > area.width() {
+        return top;
+    }
+    let y = heading(paper, v, area, y, "Key plan: slabs of this drawing, not set out");
     let mut x = area.min[0];
     for (slab, length) in model.slabs.iter().zip(&lengths) {
         let (w, h) = ((length * scale).max(1.5), (slab.width * scale).max(1.5));
@@ -106,8 +107,7 @@ pub fn key_plan(paper: &mut Paper, v: &View, model: &BarModel, shown: (&str, f64
             let to = x + ((shown.2 - slab.stations.start) * scale).clamp(0.0, w);
             hatch(paper, v, from, bottom - h, to, bottom);
         }
-        let name = if slab.members > 1 { format!("{} x {}", slab.mark, slab.members) } else { slab.mark.clone() };
-        let area = paper.text(&Lettering::new(Layer::Text, v.note), Spot::level([x, bottom + v.note + 1.2], Anchor::Start), &name);
+        let area = paper.text(&Lettering::new(Layer::Text, v.note), Spot::level([x, bottom + v.note + 1.2], Anchor::Start), &named(slab));
         x = (x + w).max(area.max[0]) + gap;
     }
     y + KEY + v.note + 6.0

@@ -119,11 +119,6 @@ impl Paper {
         self.scene.push(lettering.layer, &lettering.mark, shape);
     }
 
-    /// Keeps text out of an area.
-    pub fn reserve(&mut self, area: Area) {
-        self.index.add_box(area, Firmness::Text);
-    }
-
     /// A text that finds its place when all lines are drawn.
     pub fn label(&mut self, mut label: Label) {
         label.width = crate::tables::font::face().width(&label.text, label.lettering.height);

@@ -82,7 +82,7 @@ impl PlanView<'_> {
     fn section_marks(&self, paper: &mut Paper) {
         let v = self.view;
         let st = &self.subject.model.stations;
-        let y = self.y(0.3 * self.width());
+        let y = self.y(super::bands::section_across(self.subject, self.gap));
         let heavy = Pen::solid(v.pens.other);
         let letter = Lettering::new(Layer::Text, v.call_out);
         for (x, out) in [(v.x(st.start.max(v.low)), -1.0), (v.x(st.end.min(v.high)), 1.0)] {

@@ -4,11 +4,15 @@ use super::along::end_ticks;
 use super::dimension::{figure, level, tick};
 use super::label::Label;
 use super::paper::{Lettering, Paper, Spot};
+use super::section::clip;
 use super::view::{Occurrence, Subject, View};
 use crate::base::mm;
 use crate::plan::{Layer as BarLayer, Role};
 use crate::scene::{Anchor, Layer, Pen};
 use crate::tables::font::face;
+
+/// How far past a match line a dimension may run that belongs to the support there, mm in the slab.
+pub(super) const PAST: f64 = 1500.0;
 
 /// Rows of occurrences that do not meet.
 pub struct Rows<'m> {
@@ -90,16 +94,19 @@ fn bar(paper: &mut Paper, v: &View, occurrence: &Occurrence, y: f64) {
     let Some(set) = occurrence.sets.first() else { return };
     // The main leg lies on the row's line; what turns away from it is drawn a little above or below.
     let main = occurrence.main_level();
-    let points: Vec<[f64; 2]> = set
+    let line: Vec<[f64; 2]> = set
         .axis
         .iter()
         .map(|p| {
             let turned = if (p[2] - main).abs() < 0.5 { 0.0 } else { UPRIGHT * (main - p[2]).signum() };
-            [v.x(p[0].clamp(v.low, v.high)), y + turned]
+            [p[0], y + turned]
         })
         .collect();
     let mark = occurrence.bar.mark.as_str();
-    paper.line(ink(occurrence), mark, &points, Pen::solid(v.pens.main));
+    for part in clip(&line, v.low, v.high) {
+        let points: Vec<[f64; 2]> = part.iter().map(|p| [v.x(p[0]), p[1]]).collect();
+        paper.line(ink(occurrence), mark, &points, Pen::solid(v.pens.main));
+    }
     let (low, high) = occurrence.extent();
     if occurrence.bar.is_straight() {
         end_ticks(paper, v, ink(occurrence), mark, (low, high), y);
@@ -168,7 +175,7 @@ pub fn lap_over(subject: &Subject, centre: f64) -> Option<(f64, f64)> {
 fn laps(paper: &mut Paper, view: &View, subject: &Subject, y: f64) {
     let supports = &subject.model.stations.supports;
     for support in supports.iter().skip(1).take(supports.len().saturating_sub(2)) {
-        if let Some((start, end)) = lap_over(subject, support.centre).filter(|(start, end)| view.shows(*start) && view.shows(*end)) {
+        if let Some((start, end)) = lap_over(subject, support.centre).filter(|(start, end)| view.shows(*start) && *end < view.high + PAST) {
             level(paper, view, view.x(start), view.x(end), y, &format!("lap {}", mm(end - start)));
         }
     }

@@ -251,8 +251,7 @@ pub fn name_layers(paper: &mut Paper, v: &View, cut: &Cut) {
     let thin = Pen::solid(v.pens.thin);
     let mut levels: Vec<(BarLayer, f64)> = Vec::new();
     for layer in [BarLayer::T1, BarLayer::T2, BarLayer::B2, BarLayer::B1] {
-        let of_layer = cut.subject.model.bars.iter().filter(|b| b.layer == layer);
-        let z = of_layer.flat_map(|b| &b.sets).map(|s| s.axis[0][2].max(s.axis.last().map_or(0.0, |p| p[2]))).next();
+        let z = cut.subject.occurrences.iter().find(|o| o.bar.layer == layer).map(|o| o.main_level());
         levels.extend(z.map(|z| (layer, z)));
     }
     let pitch = ((cut.height() + 1.0) / 3.0).max(1.25 * v.note + 0.5);
@@ -264,8 +263,9 @@ pub fn name_layers(paper: &mut Paper, v: &View, cut: &Cut) {
     }
     let right = cut.x(cut.high);
     if let Some(level) = cut.subject.slab.level {
-        let sign = if level >= 0.0 { "+" } else { "" };
-        let text = format!("{sign}{:.3}", level / 1000.0);
+        let metres = (level.round() + 0.0) / 1000.0;
+        let sign = if metres >= 0.0 { "+" } else { "" };
+        let text = format!("{sign}{:.3}", metres.abs() * if metres < 0.0 { -1.0 } else { 1.0 });
         let area = paper.text(&lettering, Spot::level([right + 9.0, cut.corner[1] - 0.25 * v.note - 0.6], Anchor::Start), &text);
         paper.line(Layer::Dimension, "", &[[right + 1.0, cut.corner[1]], [area.max[0], cut.corner[1]]], thin);
     }
@@ -299,7 +299,7 @@ fn rounded(line: &[[f64; 2]], radius: f64) -> Vec<[f64; 2]> {
 }
 
 /// The parts of a line between two stations.
-fn clip(line: &[[f64; 2]], low: f64, high: f64) -> Vec<Vec<[f64; 2]>> {
+pub(super) fn clip(line: &[[f64; 2]], low: f64, high: f64) -> Vec<Vec<[f64; 2]>> {
     let mut parts: Vec<Vec<[f64; 2]>> = Vec::new();
     let mut part: Vec<[f64; 2]> = Vec::new();
     for w in line.windows(2) {

@@ -15,6 +15,7 @@ use crate::job::Job;
 use crate::place::BarModel;
 use crate::scene::{Layer, Pen, Scene};
 use crate::tables::SheetSize;
+use itertools::Itertools;
 
 /// A slab, or a part of one, and how it stands on a sheet.
 #[derive(Clone, Debug)]
@@ -35,12 +36,6 @@ pub struct Frame<'a> {
     pub model: &'a BarModel,
     pub checks: &'a [Vec<Check>],
     pub of: usize,
-}
-
-/// A sheet as drawn, and its texts that found no free place.
-pub struct Drawn {
-    pub scene: Scene,
-    pub unplaced: Vec<String>,
 }
 
 pub fn column_width(size: &SheetSize) -> f64 {
@@ -107,7 +102,7 @@ fn layout(subject: &Subject, choice: &Choice, v: &View) -> Option<Layout> {
 }
 
 /// Draws one sheet; none where its parts do not fit it.
-pub fn sheet(all: &Frame, subject: &Subject, choice: &Choice, number: usize, neighbours: &[Neighbour]) -> Option<Drawn> {
+pub fn sheet(all: &Frame, subject: &Subject, choice: &Choice, number: usize, neighbours: &[Neighbour]) -> Option<Scene> {
     let (job, size) = (all.job, choice.size);
     let area = band_area(size);
     let measure = View::new(size, choice.scale, choice.low, choice.high, area.min[0]);
@@ -168,7 +163,9 @@ pub fn sheet(all: &Frame, subject: &Subject, choice: &Choice, number: usize, nei
     describe(&mut scene, all, subject, choice, number);
     bookmarks::name_marks(&mut scene, subject.model);
     scene.bookmarks = bookmarks::bookmarks(&scene, &format!("Sheet {number}: slab {}", subject.slab.mark), &views);
-    Some(Drawn { scene, unplaced })
+    scene.slab.clone_from(&subject.slab.mark);
+    scene.unplaced = unplaced;
+    Some(scene)
 }
 
 /// Key, legend, notes and lists from the top of the column; returns the paper height below them, and whether the marks are among
@@ -203,7 +200,8 @@ fn describe(scene: &mut Scene, all: &Frame, subject: &Subject, choice: &Choice, 
     let part = if all.of > 1 { format!(", sheet {number} of {}", all.of) } else { String::new() };
     scene.title = format!("{} {}, revision {}: {}, slab {mark}{part}", head.drawing, head.title, head.revision, head.project);
     scene.description = format!(
-        "Reinforcement of slab {mark}: bottom plan, top plan, section along the span and bars drawn out, at 1:{} on {}. {} marks. Dated {}.",
+        "Reinforcement of slab {mark}: {}, at 1:{} on {}. {} marks. Dated {}.",
+        choice.columns.iter().flat_map(|c| c.iter()).map(|b| b.word()).join(", "),
         choice.scale,
         choice.size.name,
         subject.model.bars.len(),

@@ -131,11 +131,6 @@ impl<'a> Occurrence<'a> {
         lines
     }
 
-    /// The bar nearest to a place across its run.
-    pub fn nearest(&self, axis: usize, to: f64) -> f64 {
-        self.lines(axis).into_iter().min_by(|a, b| (a - to).abs().total_cmp(&(b - to).abs())).unwrap_or(to)
-    }
-
     pub fn turn(&self) -> &'static str {
         self.sets.first().map_or("", |s| s.turn)
     }
