@@ -75,3 +75,49 @@ fn every_mark_is_called_out_with_its_number() {
         assert!(checks.iter().all(|c| c.value == c.limit), "{name}: {checks:?}");
     }
 }
+
+/// A sample with keys of `[job]` and lengths changed.
+fn changed(name: &str, from: &str, to: &str) -> IssueSet {
+    let text = std::fs::read_to_string(crate::samples::root().join(format!("samples/{name}.toml"))).unwrap();
+    assert!(text.contains(from));
+    slabwright::issue_set::detail(text.replace(from, to).as_bytes(), &|_| Err("none".into())).set.unwrap()
+}
+
+#[test]
+fn a_slab_too_large_for_the_sheet_asked_for_still_gets_one() {
+    let set = changed("ferry-hall", "revision =", "sheet = \"A3\"\nscale = 20\nrevision =");
+    let scenes = sheets(&set);
+    assert!(!scenes.is_empty() && scenes.iter().all(|s| s.unplaced.is_empty()), "three spans at 1:20 do not go on an A3: scale and sheet are given up");
+    let small = sheets(&changed("gate-landing", "revision =", "sheet = \"A3\"\nrevision ="));
+    assert!(small.len() == 3 && small.iter().all(|s| s.unplaced.is_empty() && s.width == 420.0), "a landing goes on A3: bottom, top and close-ups");
+}
+
+#[test]
+fn texts_without_a_place_are_a_failed_check_and_stamp_the_sheet() {
+    let mut set = changed("rope-walk", "revision =", "sheet = \"A1\"\nscale = 100\nrevision =");
+    for span in &mut set.model.slabs[0].stations.spans {
+        assert!(span.clear > 5000.0);
+    }
+    // The same bars with far longer marks: no sheet holds their call-outs.
+    for (i, bar) in set.model.slabs[0].bars.iter_mut().enumerate() {
+        bar.mark = format!("{i:0>60}");
+    }
+    let pdf = set.documents(&["sheet-svg".into()]).unwrap();
+    let crowded: Vec<_> = set.all_checks().into_iter().filter(|c| c.code == "sheet-texts").collect();
+    assert!(crowded.len() == 1 && crowded[0].value > 0.0, "{crowded:?}");
+    assert!(String::from_utf8_lossy(&pdf[0].bytes).contains("NOT FOR CONSTRUCTION: "), "the sheet is stamped");
+}
+
+#[test]
+fn a_bent_up_end_is_as_high_as_the_schedule_says() {
+    // Invented: thin bearings at the ends make the bottom bars bend up where a straight end does not anchor.
+    let set = changed("mill-store", "required = 362", "required = 362\nshear = 60");
+    let bent: Vec<_> = set.model.bars().filter(|(_, b)| b.shape == "11").map(|(_, b)| (b.mark.clone(), b.dims[&'B'].min(b.dims[&'A']))).collect();
+    for scene in sheets(&set) {
+        for (mark, height) in &bent {
+            let said =
+                scene.items.iter().any(|i| matches!(&i.shape, Shape::Text { text, .. } if text == &height.to_string() || *text == format!("{mark} {height}")));
+            assert!(said, "{}: the upright of mark {mark} is {height}", scene.title);
+        }
+    }
+}

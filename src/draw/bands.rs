@@ -40,6 +40,9 @@ pub const PAIRED: &[&[Band]] = &[&[Band::BottomPlan, Band::BottomRows], &[Band::
 pub const BOTTOM: &[&[Band]] = &[&[Band::BottomPlan, Band::BottomRows, Band::Section]];
 pub const TOP: &[&[Band]] = &[&[Band::TopPlan, Band::TopRows, Band::Section]];
 
+/// Close-ups and sections on a sheet of their own.
+pub const DETAILS: &[&[Band]] = &[];
+
 /// Paper of the support stubs under the section, mm.
 pub(super) const STUBS: f64 = 10.0;
 /// Paper over a plan for the name of its far edge and the mark of the section across, mm.

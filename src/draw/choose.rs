@@ -1,7 +1,7 @@
 //! Which sheets a slab stands on: large scales and small sheets first, whole before in parts, until every text has a place of its own.
 //! What does not fit goes on a larger sheet, then at a smaller scale, then over several sheets cut at supports.
 
-use super::bands::{self, BOTTOM, Band, Gap, Neighbour, PAIRED, STACKED, TOP, margin};
+use super::bands::{self, BOTTOM, Band, DETAILS, Gap, Neighbour, PAIRED, STACKED, TOP, margin};
 use super::plan_view::BREAK;
 use super::sheet::{Choice, Frame, band_area, sheet};
 use super::view::{Subject, View};
@@ -32,7 +32,8 @@ pub fn sheets(job: &Job, model: &BarModel, checks: &[Vec<Check>]) -> Vec<Scene> 
 }
 
 /// The first way to draw a slab in which every text finds its place; where there is none, the one that leaves the fewest over. A sheet
-/// or scale that the job asks for and that cannot hold the slab is given up, the scale first: the title block says which was taken.
+/// or scale that the job asks for and that cannot hold the slab with all its texts is given up, the scale first: the title block says
+/// which was taken.
 fn choose(all: &Frame, subject: &Subject, first: usize) -> (Vec<Choice>, Vec<Scene>) {
     let head = &all.job.head;
     let mut best: Option<(usize, Vec<Choice>, Vec<Scene>)> = None;
@@ -50,9 +51,6 @@ fn choose(all: &Frame, subject: &Subject, first: usize) -> (Vec<Choice>, Vec<Sce
             if unplaced < least {
                 best = Some((unplaced, choices, drawn));
             }
-        }
-        if best.is_some() {
-            break;
         }
     }
     best.map(|(_, choices, drawn)| (choices, drawn)).unwrap_or_default()
@@ -117,10 +115,12 @@ fn ways(subject: &Subject, size: Option<&str>, scale: Option<u32>) -> Vec<Vec<Ch
     let st = &subject.model.stations;
     let (low, high) = (st.start.min(st.supports[0].centre), st.end.max(st.supports[st.last()].centre));
     let mut ways = Vec::new();
-    let whole: [&[&[&[Band]]]; 3] = [&[STACKED], &[PAIRED], &[BOTTOM, TOP]];
+    // The last sheet of a way has the close-ups.
+    let whole: [&[&[&[Band]]]; 6] = [&[STACKED], &[PAIRED], &[BOTTOM, TOP], &[STACKED, DETAILS], &[PAIRED, DETAILS], &[BOTTOM, TOP, DETAILS]];
     for (scale, size) in scales.iter().copied().cartesian_product(&sizes) {
         ways.extend(whole.iter().map(|sheets| {
-            sheets.iter().map(|columns| Choice { size, scale, low, high, gap: None, columns, close_ups: *columns != BOTTOM }).collect::<Vec<_>>()
+            let last = sheets.len() - 1;
+            sheets.iter().enumerate().map(|(i, columns)| Choice { size, scale, low, high, gap: None, columns, close_ups: i == last }).collect::<Vec<_>>()
         }));
     }
     ways.sort_by(|a, b| burden(a).total_cmp(&burden(b)));

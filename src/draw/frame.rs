@@ -97,9 +97,11 @@ pub fn title_block(paper: &mut Paper, job: &Job, title: &Title, width: f64) -> f
     ];
     let pen = Pen::solid(title.size.pens.concrete);
     let label = Lettering { layer: Layer::Frame, mark: String::new(), height: text.label };
+    // On A3 the paper is short: labels stand before their values.
+    let is_small = title.size.height < 300.0;
     let mut y = area.max[1];
     for (size, cells) in rows {
-        let top = y - row_height(text.label, size);
+        let top = y - row_height(text.label, size, is_small);
         paper.line(Layer::Frame, "", &[[x0, top], [x1, top]], pen);
         let mut x = x0;
         for (share, name, value) in cells {
@@ -107,8 +109,10 @@ pub fn title_block(paper: &mut Paper, job: &Job, title: &Title, width: f64) -> f
             if x > x0 {
                 paper.line(Layer::Frame, "", &[[x, top], [x, y]], pen);
             }
-            paper.text(&label, Spot { at: [x + 1.2, top + text.label + 1.0], anchor: Anchor::Start, upward: false }, name);
-            fitted(paper, [x + 1.2, y - 0.25 * size - 0.7], right - x - 2.4, size, text.label, value);
+            let base = if is_small { y - 0.25 * size - 0.7 } else { top + text.label + 1.0 };
+            let named = paper.text(&label, Spot::level([x + 1.2, base], Anchor::Start), name);
+            let from = if is_small { named.max[0] + 1.2 } else { x + 1.2 };
+            fitted(paper, [from, y - 0.25 * size - 0.7], right - from - 1.2, size, text.label, value);
             x = right;
         }
         y = top;
@@ -117,9 +121,9 @@ pub fn title_block(paper: &mut Paper, job: &Job, title: &Title, width: f64) -> f
     revisions(paper, job, title, x0, width, y)
 }
 
-/// Height of a row: label, value, air.
-fn row_height(label: f64, value: f64) -> f64 {
-    1.0 + 1.25 * label + 0.5 + 1.25 * value + 0.7
+/// Height of a row: label over the value or before it, air.
+fn row_height(label: f64, value: f64, is_small: bool) -> f64 {
+    if is_small { 1.25 * value + 1.6 } else { 1.0 + 1.25 * label + 0.5 + 1.25 * value + 0.7 }
 }
 
 /// The revision table over the title block; returns its top.

@@ -59,7 +59,7 @@ pub fn notes(job: &Job, slab: &Slab, placed: &SlabModel) -> Vec<String> {
         notes.push(note("heavy", &[("marks", heavy), ("limit", num(limit, 0))]));
     }
     notes.push(note("figures", &[("editions", editions(job))]));
-    notes.extend(t.notes.caution.iter().map(|c| c.text.clone()));
+    notes.push(t.notes.caution.iter().map(|c| c.text.as_str()).join(" "));
     notes
 }
 

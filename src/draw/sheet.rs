@@ -42,7 +42,7 @@ pub fn column_width(size: &SheetSize) -> f64 {
     match size.name.as_str() {
         "A1" => 180.0,
         "A2" => 150.0,
-        _ => 130.0,
+        _ => 152.0,
     }
 }
 
@@ -180,7 +180,9 @@ fn fill_column(paper: &mut Paper, all: &Frame, subject: &Subject, choice: &Choic
     y = column::layer_key(paper, v, subject.model, column, y);
     y = column::legend(paper, v, subject, column, y);
     y = column::notes(paper, v, &notes::notes(all.job, subject.slab, subject.model), column, y);
-    y = lists::schedules(paper, v, all.job, all.model, column, y);
+    if choice.size.height > 300.0 {
+        y = lists::schedules(paper, v, all.job, all.model, column, y);
+    }
     let st = &subject.model.stations;
     let is_part = choice.low > st.supports[0].centre.max(st.start) + 0.5 || choice.high < st.supports[st.last()].centre.min(st.end) - 0.5;
     if is_part || all.model.slabs.len() > 1 {
@@ -201,7 +203,7 @@ fn describe(scene: &mut Scene, all: &Frame, subject: &Subject, choice: &Choice, 
     scene.title = format!("{} {}, revision {}: {}, slab {mark}{part}", head.drawing, head.title, head.revision, head.project);
     scene.description = format!(
         "Reinforcement of slab {mark}: {}, at 1:{} on {}. {} marks. Dated {}.",
-        choice.columns.iter().flat_map(|c| c.iter()).map(|b| b.word()).join(", "),
+        choice.columns.iter().flat_map(|c| c.iter()).map(|b| b.word()).chain(choice.close_ups.then_some("close-ups")).join(", "),
         choice.scale,
         choice.size.name,
         subject.model.bars.len(),
