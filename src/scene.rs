@@ -62,6 +62,17 @@ pub enum Anchor {
     End,
 }
 
+impl Anchor {
+    /// The share of a text's width that lies before its anchor.
+    pub fn before(self) -> f64 {
+        match self {
+            Anchor::Start => 0.0,
+            Anchor::Middle => 0.5,
+            Anchor::End => 1.0,
+        }
+    }
+}
+
 #[derive(Clone, Debug)]
 pub enum Shape {
     Line {
@@ -144,12 +155,34 @@ pub struct CallOut<'s> {
 }
 
 impl CallOut<'_> {
+    /// Where its base line starts or turns, mm.
+    pub fn at(&self) -> Option<[f64; 2]> {
+        if let Shape::Text { at, .. } = self.shape { Some(*at) } else { None }
+    }
+
     /// The number of bars where the text has it: `37H12-01-200 B1` says 37. A mark without its number says nothing.
     pub fn number(&self) -> Option<u32> {
         let digits = self.text.find(|c: char| !c.is_ascii_digit()).map_or(self.text, |end| &self.text[..end]);
         let is_full = self.text[digits.len()..].starts_with(|c: char| c.is_ascii_uppercase()) && self.text.contains(&format!("-{}", self.mark));
         if is_full { digits.parse().ok() } else { None }
     }
+}
+
+/// For each mark the scene and the call-out that a reader wants first: the one with the number before any other, else the first drawn.
+pub fn first_call_outs<'s>(scenes: impl Iterator<Item = &'s Scene>) -> BTreeMap<&'s str, (usize, CallOut<'s>)> {
+    let mut first: BTreeMap<&str, (usize, CallOut)> = BTreeMap::new();
+    for (i, call_out) in scenes.enumerate().flat_map(|(i, scene)| scene.call_outs().map(move |c| (i, c))) {
+        let is_full = |c: &CallOut| c.number().is_some();
+        if first.get(call_out.mark).is_none_or(|(_, known)| is_full(&call_out) && !is_full(known)) {
+            first.insert(call_out.mark, (i, call_out));
+        }
+    }
+    first
+}
+
+/// The corner from which a thing at `at` is seen with something over and before it, mm.
+pub fn seen_from(at: [f64; 2]) -> [f64; 2] {
+    [(at[0] - 40.0).max(0.0), (at[1] - 30.0).max(0.0)]
 }
 
 impl Scene {

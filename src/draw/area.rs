@@ -1,7 +1,7 @@
 //! Rectangles on paper, and the box that a text fills.
 
 use crate::scene::Anchor;
-use crate::tables::font::face;
+use crate::tables::font::{face, text_box};
 
 /// A rectangle on paper, mm.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -70,15 +70,6 @@ pub fn text_area(at: [f64; 2], height: f64, text: &str, anchor: Anchor, upward: 
 
 /// The box of a text whose width is known, mm.
 pub fn wide_area(at: [f64; 2], height: f64, width: f64, anchor: Anchor, upward: bool) -> Area {
-    let before = match anchor {
-        Anchor::Start => 0.0,
-        Anchor::Middle => width / 2.0,
-        Anchor::End => width,
-    };
-    let (above, below) = (height, 0.25 * height);
-    if upward {
-        Area::new([at[0] - above, at[1] - width + before], [at[0] + below, at[1] + before])
-    } else {
-        Area::new([at[0] - before, at[1] - above], [at[0] - before + width, at[1] + below])
-    }
+    let [min, max] = text_box(at, height, width, anchor.before(), upward);
+    Area::new(min, max)
 }

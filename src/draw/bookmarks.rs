@@ -2,28 +2,17 @@
 
 use super::paper::Area;
 use crate::place::{BarType, SlabModel};
-use crate::scene::{Bookmark, Scene, Shape};
-use std::collections::BTreeMap;
+use crate::scene::{Bookmark, Scene, first_call_outs, seen_from};
 
 /// Bookmarks of a finished sheet: the sheet, its views in the order given, and under each view the marks whose first call-out stands in it.
 /// Marks outside every view come last, straight under the sheet.
 pub fn bookmarks(scene: &Scene, title: &str, views: &[(String, Area)]) -> Vec<Bookmark> {
-    // The call-out with the number before any other, else the first drawn.
-    let mut called: BTreeMap<&str, (bool, [f64; 2])> = BTreeMap::new();
-    for call_out in scene.call_outs() {
-        let is_full = call_out.number().is_some();
-        let is_better = called.get(call_out.mark).is_none_or(|(known, _)| is_full && !known);
-        if let Shape::Text { at, .. } = call_out.shape
-            && is_better
-        {
-            called.insert(call_out.mark, (is_full, *at));
-        }
-    }
     let view = |at: [f64; 2]| views.iter().position(|(_, area)| area.holds(&Area::new(at, at)));
-    let found: Vec<(&str, [f64; 2], Option<usize>)> = called.into_iter().map(|(mark, (_, at))| (mark, at, view(at))).collect();
+    let called = first_call_outs(std::iter::once(scene));
+    let found: Vec<(&str, [f64; 2], Option<usize>)> = called.into_iter().filter_map(|(mark, (_, c))| c.at().map(|at| (mark, at, view(at)))).collect();
     let of_view = |view: Option<usize>, level: u8| {
         let own = found.iter().filter(move |(.., v)| *v == view);
-        own.map(move |(mark, at, _)| Bookmark { title: scene.names.get(*mark).cloned().unwrap_or_else(|| format!("mark {mark}")), at: near(*at), level })
+        own.map(move |(mark, at, _)| Bookmark { title: scene.names.get(*mark).cloned().unwrap_or_else(|| format!("mark {mark}")), at: seen_from(*at), level })
     };
     let mut list = vec![Bookmark { title: title.into(), at: [0.0, 0.0], level: 0 }];
     for (i, (name, area)) in views.iter().enumerate() {
@@ -32,11 +21,6 @@ pub fn bookmarks(scene: &Scene, title: &str, views: &[(String, Area)]) -> Vec<Bo
     }
     list.extend(of_view(None, 1));
     list
-}
-
-/// The corner from which a text is seen with something round it.
-fn near(at: [f64; 2]) -> [f64; 2] {
-    [(at[0] - 40.0).max(0.0), (at[1] - 30.0).max(0.0)]
 }
 
 /// Gives a scene the role and the name of every mark of a slab.

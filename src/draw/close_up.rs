@@ -357,17 +357,7 @@ pub(super) fn names(paper: &mut Paper, v: &View, cut: &Cut, points: Vec<(String,
                 near.push(Spot::level([at[0] + 3.0 + step, base], Anchor::Middle));
             }
         }
-        paper.label(Label {
-            lettering: Lettering::of(Layer::CallOut, &mark, v.note),
-            text: mark,
-            width: 0.0,
-            near,
-            target: Some(at),
-            reach: 40.0,
-            leads: true,
-            within: *within,
-            order: 4,
-            leader_pen: Pen::solid(v.pens.thin),
-        });
+        let label = Label::new(Lettering::of(Layer::CallOut, &mark, v.note), mark, near, *within, Pen::solid(v.pens.thin)).leader(at, 40.0).order(4);
+        paper.label(label.leads());
     }
 }

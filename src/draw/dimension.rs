@@ -15,18 +15,8 @@ pub fn tick(paper: &mut Paper, layer: Layer, mark: &str, at: [f64; 2], width: f6
 /// A figure that waits for one of these places, or for one near by with a leader to its dimension.
 pub fn figure(paper: &mut Paper, v: &View, near: Vec<Spot>, target: [f64; 2], text: &str) {
     let within = paper.room;
-    paper.label(Label {
-        lettering: Lettering::new(Layer::Dimension, v.note),
-        text: text.into(),
-        width: 0.0,
-        near,
-        target: Some(target),
-        reach: 24.0,
-        leads: false,
-        within,
-        order: 0,
-        leader_pen: Pen::solid(v.pens.thin),
-    });
+    let label = Label::new(Lettering::new(Layer::Dimension, v.note), text.into(), near, within, Pen::solid(v.pens.thin)).leader(target, 24.0);
+    paper.label(label);
 }
 
 /// Text base lines over, through and under a level line.
@@ -38,7 +28,8 @@ fn under(v: &View, y: f64) -> f64 {
     y + v.note + 0.6
 }
 
-fn level_line(paper: &mut Paper, v: &View, x0: f64, x1: f64, y: f64) {
+/// A level dimension line with its terminators, without a figure.
+pub fn level_line(paper: &mut Paper, v: &View, x0: f64, x1: f64, y: f64) {
     paper.line(Layer::Dimension, "", &[[x0, y], [x1, y]], Pen::solid(v.pens.thin));
     for x in [x0, x1] {
         tick(paper, Layer::Dimension, "", [x, y], v.pens.thin);

@@ -113,16 +113,9 @@ pub fn match_line(paper: &mut Paper, v: &View, station: f64, grid: &str, sheet: 
     let side = if out < 0.0 { Anchor::End } else { Anchor::Start };
     let under = [v.note + 2.0, 2.5 * v.note + 2.0].map(|dy| Spot::level([x + out * 2.0, bottom + dy], side));
     let near = [3.0, 8.0, 13.0].into_iter().flat_map(down).map(|(by, y)| Spot::upright([beside(by), y], Anchor::Middle)).chain(under);
-    paper.label(Label {
-        lettering: Lettering::new(Layer::Text, v.note),
-        text: format!("match line {grid}: see sheet {sheet}"),
-        width: 0.0,
-        near: near.collect(),
-        target: Some([x + out * 0.8, (top + bottom) / 2.0]),
-        reach: 90.0,
-        leads: false,
-        within: paper.room,
-        order: 3,
-        leader_pen: Pen::solid(v.pens.thin),
-    });
+    let label =
+        Label::new(Lettering::new(Layer::Text, v.note), format!("match line {grid}: see sheet {sheet}"), near.collect(), paper.room, Pen::solid(v.pens.thin))
+            .leader([x + out * 0.8, (top + bottom) / 2.0], 90.0)
+            .order(3);
+    paper.label(label);
 }

@@ -12,8 +12,8 @@ use crate::tables::font::face;
 pub struct Label {
     pub lettering: Lettering,
     pub text: String,
-    /// Width of the text, mm; known once the label waits.
-    pub width: f64,
+    /// Width of the text, mm.
+    width: f64,
     /// Places beside what it names, the best first.
     pub near: Vec<Spot>,
     /// What a leader points at, where no near place is free; none for texts that may not leave their place.
@@ -30,6 +30,27 @@ pub struct Label {
 }
 
 impl Label {
+    /// A text that may stand at these places and nowhere else, and chooses first.
+    pub fn new(lettering: Lettering, text: String, near: Vec<Spot>, within: Area, leader_pen: Pen) -> Label {
+        let width = face().width(&text, lettering.height);
+        Label { lettering, text, width, near, target: None, reach: 0.0, within, leads: false, order: 0, leader_pen }
+    }
+
+    /// Where no near place is free, a leader of this reach leads to the target.
+    pub fn leader(self, target: [f64; 2], reach: f64) -> Label {
+        Label { target: Some(target), reach, ..self }
+    }
+
+    /// Near places have a leader as well: the text never stands on what it names.
+    pub fn leads(self) -> Label {
+        Label { leads: true, ..self }
+    }
+
+    /// Lower numbers choose first; 0 where nothing is said.
+    pub fn order(self, order: u8) -> Label {
+        Label { order, ..self }
+    }
+
     fn area(&self, spot: &Spot) -> Area {
         wide_area(spot.at, self.lettering.height, self.width, spot.anchor, spot.upward)
     }
@@ -73,18 +94,7 @@ struct Standing {
 impl Paper {
     /// Writes a text at once, at the cheapest of these places.
     pub fn place(&mut self, lettering: &Lettering, spots: impl IntoIterator<Item = Spot>, text: &str, within: &Area) {
-        let label = Label {
-            lettering: lettering.clone(),
-            text: text.into(),
-            width: face().width(text, lettering.height),
-            near: spots.into_iter().collect(),
-            target: None,
-            reach: 0.0,
-            within: *within,
-            leads: false,
-            order: 0,
-            leader_pen: Pen::solid(0.0),
-        };
+        let label = Label::new(lettering.clone(), text.into(), spots.into_iter().collect(), *within, Pen::solid(0.0));
         if let Some(place) = best(self, &label, TEXT) {
             self.text(lettering, place.spot, text);
         }

@@ -120,8 +120,7 @@ impl Paper {
     }
 
     /// A text that finds its place when all lines are drawn.
-    pub fn label(&mut self, mut label: Label) {
-        label.width = crate::tables::font::face().width(&label.text, label.lettering.height);
+    pub fn label(&mut self, label: Label) {
         self.labels.push(label);
     }
 

@@ -164,18 +164,11 @@ impl PlanView<'_> {
     /// Asks for a call-out's place: on its line where it can, else with a leader to `target`.
     pub(super) fn call_out(&self, paper: &mut Paper, near: Vec<Spot>, target: [f64; 2], occurrence: &Occurrence) {
         let v = self.view;
-        paper.label(Label {
-            lettering: Lettering::of(Layer::CallOut, &occurrence.bar.mark, v.call_out),
-            text: self.says(occurrence),
-            width: 0.0,
-            near,
-            target: Some(target),
-            reach: REACH,
-            leads: false,
-            within: self.within,
-            order: if occurrence.first { 1 } else { 2 },
-            leader_pen: Pen::solid(v.pens.thin),
-        });
+        let label =
+            Label::new(Lettering::of(Layer::CallOut, &occurrence.bar.mark, v.call_out), self.says(occurrence), near, self.within, Pen::solid(v.pens.thin))
+                .leader(target, REACH)
+                .order(if occurrence.first { 1 } else { 2 });
+        paper.label(label);
     }
 
     /// What a call-out says on this sheet: a set that goes on from the sheet before is counted there; the first place of a mark on a
@@ -213,18 +206,15 @@ impl PlanView<'_> {
             let spots =
                 [1.0, 0.92, 0.85, 0.77, 0.7, 0.62, 0.55, 0.47, 0.4, 0.32, 0.25].map(|share| Spot::level([left + share * (right - left), at], Anchor::End));
             let outside = [2.0, 6.0].map(|out| Spot::level([right + out, if side == 0 { y } else { y + v.note }], Anchor::Start));
-            paper.label(Label {
-                lettering: Lettering::new(Layer::Text, v.note),
-                text: format!("{near}{text}"),
-                width: 0.0,
-                near: spots.into_iter().chain(outside).collect(),
-                target: None,
-                reach: 0.0,
-                leads: false,
-                within: paper.room,
-                order: 3,
-                leader_pen: Pen::solid(v.pens.thin),
-            });
+            let label = Label::new(
+                Lettering::new(Layer::Text, v.note),
+                format!("{near}{text}"),
+                spots.into_iter().chain(outside).collect(),
+                paper.room,
+                Pen::solid(v.pens.thin),
+            )
+            .order(3);
+            paper.label(label);
         }
     }
 }

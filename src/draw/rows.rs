@@ -1,7 +1,7 @@
 //! Bars drawn out: each mark of B1, T1 and the ends at its true station, its ends dimensioned from a grid, its laps dimensioned.
 
 use super::along::end_ticks;
-use super::dimension::{figure, level, tick};
+use super::dimension::{figure, level, level_line};
 use super::label::Label;
 use super::paper::{Lettering, Paper, Spot};
 use super::section::clip;
@@ -115,18 +115,10 @@ fn bar(paper: &mut Paper, v: &View, occurrence: &Occurrence, y: f64) {
     let over = y - 0.25 * v.note - 1.9;
     let shares = [0.5, 0.45, 0.55, 0.4, 0.6, 0.3, 0.7, 0.2, 0.8, 0.1, 0.9, 0.0, 1.0];
     let near = shares.map(|s| Spot::level([v.x(from + s * (to - from)), over], Anchor::Middle)).to_vec();
-    paper.label(Label {
-        lettering: Lettering::of(Layer::CallOut, mark, v.note),
-        text: name(occurrence),
-        width: 0.0,
-        near,
-        target: Some([v.x((from + to) / 2.0), y]),
-        reach: 20.0,
-        leads: false,
-        within: paper.room,
-        order: 1,
-        leader_pen: Pen::solid(v.pens.thin),
-    });
+    let label = Label::new(Lettering::of(Layer::CallOut, mark, v.note), name(occurrence), near, paper.room, Pen::solid(v.pens.thin))
+        .leader([v.x((from + to) / 2.0), y], 20.0)
+        .order(1);
+    paper.label(label);
 }
 
 /// Both ends from the nearest grid: the figure over its length where it fits, else past the bar end, away from the grid.
@@ -138,10 +130,7 @@ fn ends(paper: &mut Paper, v: &View, subject: &Subject, occurrence: &Occurrence,
         }
         let (from, to) = (v.x(grid), v.x(station));
         let (x0, x1) = (from.min(to), from.max(to));
-        paper.line(Layer::Dimension, "", &[[x0, y], [x1, y]], Pen::solid(v.pens.thin));
-        for x in [x0, x1] {
-            tick(paper, Layer::Dimension, "", [x, y], v.pens.thin);
-        }
+        level_line(paper, v, x0, x1, y);
         let text = mm((grid - station).abs());
         let over = y - 0.25 * v.note - 0.6;
         let mut near = Vec::new();

@@ -54,10 +54,9 @@ impl Face {
     }
 }
 
-/// The corners of the box that a text fills on paper, mm: its capitals and descenders. `before` is the share of its width that lies
-/// before `at`; a text that reads upward runs towards the top of the sheet.
-pub fn text_box(at: [f64; 2], height: f64, text: &str, before: f64, upward: bool) -> [[f64; 2]; 2] {
-    let width = face().width(text, height);
+/// The corners of the box that a text of this width fills on paper, mm: its capitals and descenders. `before` is the share of its width
+/// that lies before `at`; a text that reads upward runs towards the top of the sheet.
+pub fn text_box(at: [f64; 2], height: f64, width: f64, before: f64, upward: bool) -> [[f64; 2]; 2] {
     let (above, below, back) = (height, 0.25 * height, before * width);
     if upward {
         [[at[0] - above, at[1] - width + back], [at[0] + below, at[1] + back]]

@@ -1,7 +1,7 @@
 //! What joins the pages of a PDF: the outline of bookmarks, and links between a mark on a sheet and its row in the schedule.
 
-use crate::scene::{Anchor, Scene, Shape};
-use crate::tables::font::text_box;
+use crate::scene::{Scene, Shape, first_call_outs, seen_from};
+use crate::tables::font::{face, text_box};
 use crate::write::pdf::points;
 use lopdf::{Dictionary, Document, Object, ObjectId, StringFormat, dictionary};
 use std::collections::BTreeMap;
@@ -110,22 +110,14 @@ fn ends(item: &mut Dictionary, inner: &[ObjectId], sign: i64) {
 /// Call-outs lead to the rows of their marks, the marks in the schedule back to the first call-out; nothing where a file has only one of them.
 fn links(file: &mut Document, pages: &[Page]) -> Result<(), String> {
     let mut rows: BTreeMap<&str, Object> = BTreeMap::new();
-    // The call-out with the number before any other, else the first drawn.
-    let mut called: BTreeMap<&str, (bool, Object)> = BTreeMap::new();
     for page in pages {
         for row in &page.scene.rows {
-            rows.entry(&row.mark).or_insert_with(|| destination(page, above(row.area[0])));
-        }
-        for call_out in page.scene.call_outs() {
-            let is_full = call_out.number().is_some();
-            let is_better = called.get(call_out.mark).is_none_or(|(known, _)| is_full && !known);
-            if let Some(area) = corners(call_out.shape).filter(|_| is_better) {
-                called.insert(call_out.mark, (is_full, destination(page, above(area[0]))));
-            }
+            rows.entry(&row.mark).or_insert_with(|| destination(page, seen_from(row.area[0])));
         }
     }
+    let called = first_call_outs(pages.iter().map(|p| p.scene));
     let row = |mark: &str| rows.get(mark).cloned();
-    let first = |mark: &str| called.get(mark).map(|(_, to)| to.clone());
+    let first = |mark: &str| called.get(mark).and_then(|(i, c)| corners(c.shape).map(|area| destination(&pages[*i], seen_from(area[0]))));
     let mut list: Vec<(ObjectId, Vec<Object>)> = Vec::new();
     for page in pages {
         let out = page.scene.call_outs().filter_map(|c| Some(link(page, corners(c.shape)?, row(c.mark)?)));
@@ -139,19 +131,9 @@ fn links(file: &mut Document, pages: &[Page]) -> Result<(), String> {
     Ok(())
 }
 
-/// A point from which the thing at `at` is seen with something over and before it.
-fn above(at: [f64; 2]) -> [f64; 2] {
-    [(at[0] - 40.0).max(0.0), (at[1] - 30.0).max(0.0)]
-}
-
 fn corners(shape: &Shape) -> Option<[[f64; 2]; 2]> {
     let Shape::Text { at, height, text, anchor, upward } = shape else { return None };
-    let before = match anchor {
-        Anchor::Start => 0.0,
-        Anchor::Middle => 0.5,
-        Anchor::End => 1.0,
-    };
-    Some(text_box(*at, *height, text, before, *upward))
+    Some(text_box(*at, *height, face().width(text, *height), anchor.before(), *upward))
 }
 
 fn link(page: &Page, [min, max]: [[f64; 2]; 2], to: Object) -> Object {

@@ -1,6 +1,6 @@
 //! Scenes as a PDF: one page each, layers a viewer can switch, bookmarks, real text in the shipped font. Same scenes, same bytes.
 
-use crate::scene::{Anchor, Layer, Pen, Scene, Shape};
+use crate::scene::{Layer, Pen, Scene, Shape};
 use crate::tables::font::{CAPITAL, face};
 use crate::write::pages;
 use crate::write::svg::dashes;
@@ -142,11 +142,7 @@ fn draw(ops: &mut Vec<Op>, shape: &Shape, ink: &mut Ink) {
         }
         Shape::Text { at, height, text, anchor, upward } => {
             let width = face().width(text, *height);
-            let back = match anchor {
-                Anchor::Start => 0.0,
-                Anchor::Middle => width / 2.0,
-                Anchor::End => width,
-            };
+            let back = anchor.before() * width;
             let at = if *upward { [at[0], at[1] + back] } else { [at[0] - back, at[1]] };
             let p = point(at, ink);
             let turn: [f32; 4] = if *upward { [0.0, 1.0, -1.0, 0.0] } else { [1.0, 0.0, 0.0, 1.0] };
